@@ -1,0 +1,2 @@
+//! The merestone program.
+fn main() {}
