@@ -1,8 +1,17 @@
 //! The topology contract of merestone.
 #![forbid(unsafe_code)]
 
+mod column;
+mod contract;
 mod face_list;
 mod id;
+pub mod relations;
+pub mod walks;
 
+pub use column::{Column, Correspondence};
+pub use contract::{
+    ArrayBytes, Assemble, AssembleError, Compaction, Cost, Costs, EdgeKind, EditError, FaceBound,
+    Footprint, RemovedFace, Topology, TopologyExt,
+};
 pub use face_list::{EdgeUse, FaceList, FaceListBuf, FaceListError, ListedLoop, ListedLoops};
 pub use id::{EdgeId, FaceId, Id, IdError, MAX_DENSE_INDEX, OrientedEdgeId, VertexId};

@@ -1,0 +1,56 @@
+//! All corners of a vertex, sector by sector.
+
+use super::{SectorState, WalkState};
+use crate::{Id, Topology};
+
+/// The corners of a vertex: the oriented edges that start there, sector by sector.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct VertexCornersState<H>(Option<SectorState<H>>);
+
+impl<H: Id> VertexCornersState<H> {
+    /// From a vertex's first sector.
+    #[inline(always)]
+    pub fn new<K>(mesh: &K, vertex: K::Vertex) -> Self
+    where
+        K: Topology<OrientedEdge = H> + ?Sized,
+    {
+        Self(SectorState::first_of(mesh, vertex))
+    }
+}
+
+impl<K: Topology + ?Sized> WalkState<K> for VertexCornersState<K::OrientedEdge> {
+    type Item = K::OrientedEdge;
+
+    #[inline]
+    fn advance(&mut self, mesh: &K) -> Option<K::OrientedEdge> {
+        let sector = self.0.as_mut()?;
+        let corner = WalkState::<K>::advance(sector, mesh);
+        if sector.current.is_none() {
+            self.0 = sector.next_sector(mesh);
+        }
+        corner
+    }
+
+    #[inline]
+    fn fold<B>(self, mesh: &K, init: B, mut f: impl FnMut(B, K::OrientedEdge) -> B) -> B {
+        let mut accumulated = init;
+        let mut sector = self.0;
+        while let Some(state) = sector {
+            sector = state.next_sector(mesh);
+            accumulated = WalkState::<K>::fold(state, mesh, accumulated, &mut f);
+        }
+        accumulated
+    }
+
+    fn lives(&self, mesh: &K) -> bool {
+        self.0.as_ref().is_none_or(|sector| WalkState::<K>::lives(sector, mesh))
+    }
+
+    fn spend(&mut self, mesh: &K) -> bool {
+        let spent = self.0.as_mut().is_none_or(|sector| WalkState::<K>::spend(sector, mesh));
+        if !spent {
+            self.0 = None;
+        }
+        spent
+    }
+}
