@@ -1,6 +1,7 @@
-//! The third stride: vertices at boundaries, joints and misoriented edges, one at a time.
+//! Vertices at boundaries, joints and misoriented edges, with several fans, or with many corners.
 
-use super::{Corners, Links, Marks, Paired};
+use super::buckets::Buckets;
+use super::{Corners, Links, Paired};
 use crate::memory::vec_bytes;
 use crate::sectors::SectorSearch;
 use merestone_topology::{EdgeUse, OrientedEdgeId};
@@ -24,35 +25,25 @@ struct Side {
     outgoing: bool,
 }
 
-/// Links all edges at the marked vertices, then finds the sectors of these vertices.
-pub(super) fn settle<C: Corners>(
-    corners: C,
-    marks: &Marks,
+/// Links all edges at these vertices, then finds the vertices' sectors. Returns how many edge ends
+/// they have.
+pub(super) fn link<C: Corners>(
+    list: C,
+    buckets: &Buckets,
+    vertices: &[u32],
+    directions: Directions<'_>,
     links: &mut impl Links,
     paired: &mut Paired,
-    directions: Directions<'_>,
-) {
-    let mut count = 0;
-    corners.for_each_use(|_, start, _| count += usize::from(marks.is_marked(start)));
-    let mut gathered: Vec<(u32, OrientedEdgeId)> = Vec::with_capacity(count);
-    corners.for_each_use(|number, start, _| {
-        if marks.is_marked(start) {
-            gathered.push((start, OrientedEdgeId::from_u32(number)));
-        }
-    });
-    gathered.sort_unstable();
-    let widest = gathered.chunk_by(|a, b| a.0 == b.0).map(<[_]>::len).max().unwrap_or(0);
-
+) -> usize {
+    let widest = vertices.iter().map(|&v| buckets.corners(v).len()).max().unwrap_or(0);
     let mut sides: Vec<Side> = Vec::with_capacity(2 * widest);
     let mut uses: Vec<u32> = Vec::with_capacity(2 * widest);
-    for here in gathered.chunk_by(|a, b| a.0 == b.0) {
+    let mut ends = 0;
+    for &vertex in vertices {
         sides.clear();
-        for &(_, corner) in here {
-            let (leaving, entered) = (corner.to_u32(), corners.prev(corner.to_u32()));
-            for (number, far, outgoing) in [
-                (entered, corners.vertex(entered), false),
-                (leaving, corners.vertex(corners.next(leaving)), true),
-            ] {
+        for &[before, behind, number] in buckets.corners(vertex) {
+            let entered = list.prev(number);
+            for (number, far, outgoing) in [(entered, before, false), (number, behind, true)] {
                 let key = match directions {
                     Directions::ByVertices => far,
                     Directions::ByNumber(listed) => listed[number as usize].edge(),
@@ -62,48 +53,41 @@ pub(super) fn settle<C: Corners>(
         }
         sides.sort_unstable();
         for sides in sides.chunk_by(|a, b| a.key == b.key) {
-            link(sides, &mut uses, links, directions);
+            uses.clear();
+            uses.extend(sides.iter().map(|side| side.number));
+            // An edge from the vertex to itself is here with both ends: each of its uses twice.
+            uses.dedup();
+            ends += sides.len() / uses.len();
+            links.cycle(&uses, is_plain(sides, &uses, directions));
         }
     }
 
     let mut search = SectorSearch::with_capacity(widest);
     let mut at: Vec<OrientedEdgeId> = Vec::with_capacity(widest);
     paired.held(
-        marks.bytes()
-            + vec_bytes(&gathered)
+        buckets.bytes()
+            + size_of_val(vertices)
             + vec_bytes(&sides)
             + vec_bytes(&uses)
             + vec_bytes(&at)
             + search.bytes(),
     );
-    for here in gathered.chunk_by(|a, b| a.0 == b.0) {
+    for &vertex in vertices {
         at.clear();
-        at.extend(here.iter().map(|&(_, corner)| corner));
+        at.extend(buckets.corners(vertex).iter().map(|&[.., c]| OrientedEdgeId::from_u32(c)));
         let handles = search.handles(links, &at);
-        links.sectors(here[0].0, handles);
+        links.sectors(vertex, handles);
     }
+    ends
 }
 
-/// Links the uses of one edge; `sides` are those at one of its vertices.
-fn link(sides: &[Side], uses: &mut Vec<u32>, links: &mut impl Links, directions: Directions<'_>) {
-    uses.clear();
-    uses.extend(sides.iter().map(|side| side.number));
-    // An edge from the vertex to itself is here with both its ends: each of its uses twice.
-    uses.dedup();
-    let [first, second] = uses[..] else {
-        links.loose(uses);
-        return;
-    };
-    let is_plain = match directions {
+/// Whether `uses`, whose sides at one vertex are `sides`, are two and run opposite ways.
+fn is_plain(sides: &[Side], uses: &[u32], directions: Directions<'_>) -> bool {
+    let [first, second] = *uses else { return false };
+    match directions {
         Directions::ByNumber(listed) => {
             listed[first as usize].runs_with_edge() != listed[second as usize].runs_with_edge()
         }
-        Directions::ByVertices if sides.len() == 4 => true,
-        Directions::ByVertices => sides[0].outgoing != sides[1].outgoing,
-    };
-    if is_plain {
-        links.plain(first, second);
-    } else {
-        links.loose(uses);
+        Directions::ByVertices => sides.len() == 4 || sides[0].outgoing != sides[1].outgoing,
     }
 }

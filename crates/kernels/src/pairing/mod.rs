@@ -2,22 +2,24 @@
 //!
 //! The input is a list of corners, each with the vertex it lies at and the corners before and
 //! behind it; corner `c` doubles as the use of an edge from its vertex to the next corner's. The
-//! work goes in three strides:
+//! corners are sorted by vertex ([`buckets`]), and each vertex is then a small matter of its own:
 //!
-//! 1. [`buckets`] files every use under one of its two vertices and meets its partner there. All
-//!    plain edges are done after one pass. Vertices at any other edge are marked *irregular*.
-//!    A list that numbers its edges is grouped by those numbers instead ([`numbered`]).
-//! 2. [`rings`] walks once around every regular vertex, to find those where two fans meet.
-//! 3. [`irregular`] takes the marked vertices one at a time, groups the uses there by edge, and
-//!    finds the sectors by definition.
+//! 1. [`regular`]: where the vertices before and behind its corners are the same, each once, all
+//!    edges there are plain and the corners follow one another; linked without a branch that
+//!    depends on the data.
+//! 2. [`irregular`]: otherwise the uses there are grouped by edge and linked one edge at a time,
+//!    and when all links stand, the sectors are found by definition.
 //!
-//! A mesh without boundary and joints never gets to the third stride.
+//! A closed manifold mesh never gets to the second. A list that numbers its edges takes the same
+//! way with those numbers in place of the far vertices.
 
 mod buckets;
 mod irregular;
 mod numbered;
-mod rings;
+mod regular;
 
+use crate::memory::vec_bytes;
+use buckets::Buckets;
 use irregular::Directions;
 use merestone_topology::{EdgeUse, FaceListError, OrientedEdgeId, Topology};
 
@@ -28,24 +30,20 @@ pub(crate) const LOOSE: u32 = 1 << 31;
 pub(crate) trait Corners: Copy {
     /// How many there are.
     fn count(self) -> usize;
-    /// The vertex corner `c` lies at.
-    fn vertex(self, c: u32) -> u32;
-    /// The corner behind `c` in its loop.
-    fn next(self, c: u32) -> u32;
     /// The corner before `c` in its loop.
     fn prev(self, c: u32) -> u32;
-    /// Calls `f(use, start, end)` for every use, ascending.
-    fn for_each_use(self, f: impl FnMut(u32, u32, u32));
+    /// Calls `f(corner, vertex before, vertex, vertex behind)` for every corner, ascending.
+    fn for_each(self, f: impl FnMut(u32, u32, u32, u32));
 }
 
 /// A kernel whose links are being made. Its steps over linked edges must answer already.
 pub(crate) trait Links: Topology<OrientedEdge = OrientedEdgeId> {
-    /// `a` and `b` are the two uses of an edge and run opposite ways.
-    fn plain(&mut self, a: u32, b: u32);
-    /// `uses`, ascending, are all the uses of an edge that is not plain.
-    fn loose(&mut self, uses: &[u32]);
-    /// The corner behind `c` around its vertex, on a plain edge.
-    fn behind(&self, c: u32) -> u32;
+    /// The edge that `leaving` uses is plain, and around `leaving`'s start the corner behind
+    /// `leaving` is `behind`. Comes for both uses of the edge, and may come in vain before
+    /// [`loose`](Self::loose) corrects it.
+    fn turn_to(&mut self, leaving: u32, behind: u32);
+    /// `uses`, ascending, are all the uses of an edge: plain (then there are two) or not.
+    fn cycle(&mut self, uses: &[u32], is_plain: bool);
     /// `handle` stands for the only sector of `vertex`.
     fn sector(&mut self, vertex: u32, handle: u32);
     /// `handles` stand for the sectors of `vertex`.
@@ -67,50 +65,21 @@ impl Paired {
     }
 }
 
-/// Which vertices are irregular; nothing is allocated while none is.
-#[derive(Debug)]
-struct Marks {
-    vertex_count: usize,
-    marked: Vec<bool>,
-}
-
-impl Marks {
-    fn none(vertex_count: usize) -> Self {
-        Self { vertex_count, marked: Vec::new() }
-    }
-
-    #[cold]
-    fn mark(&mut self, vertex: u32) {
-        if self.marked.is_empty() {
-            self.marked = vec![false; self.vertex_count];
-        }
-        self.marked[vertex as usize] = true;
-    }
-
-    fn any(&self) -> bool {
-        !self.marked.is_empty()
-    }
-
-    #[inline(always)]
-    fn is_marked(&self, vertex: u32) -> bool {
-        self.marked.get(vertex as usize).is_some_and(|&marked| marked)
-    }
-
-    fn bytes(&self) -> usize {
-        self.marked.capacity()
-    }
-}
-
 /// Pairs the uses of a list in which an edge is an unordered pair of vertices.
+///
+/// O(corners) expected; a vertex of c corners costs O(c log c) at worst.
 pub(crate) fn pair_by_vertices<C: Corners>(
     corners: C,
     vertex_count: usize,
     links: &mut impl Links,
 ) -> Paired {
+    let buckets = Buckets::new(corners, vertex_count);
     let mut paired = Paired::default();
-    let mut marks = Marks::none(vertex_count);
-    let handles = buckets::pair(corners, vertex_count, links, &mut marks, &mut paired);
-    finish(corners, handles, &mut marks, links, &mut paired, Directions::ByVertices);
+    let (irregular, mut ends) = regular::link(&buckets, links);
+    paired.held(buckets.bytes() + vec_bytes(&irregular));
+    ends +=
+        irregular::link(corners, &buckets, &irregular, Directions::ByVertices, links, &mut paired);
+    paired.edges = ends / 2;
     paired
 }
 
@@ -125,30 +94,9 @@ pub(crate) fn pair_by_number<C: Corners>(
     uses: &[EdgeUse],
     links: &mut impl Links,
 ) -> Result<Paired, FaceListError> {
-    let mut paired = Paired::default();
-    let mut marks = Marks::none(vertex_count);
-    let handles = numbered::pair(corners, vertex_count, uses, links, &mut marks, &mut paired)?;
-    finish(corners, handles, &mut marks, links, &mut paired, Directions::ByNumber(uses));
+    let mut paired = numbered::check(corners, uses)?;
+    let buckets = Buckets::new(corners, vertex_count);
+    let all: Vec<u32> = buckets.vertices().filter(|&v| !buckets.corners(v).is_empty()).collect();
+    irregular::link(corners, &buckets, &all, Directions::ByNumber(uses), links, &mut paired);
     Ok(paired)
-}
-
-/// The second and third stride. `handles` holds some corner of every vertex, or [`u32::MAX`].
-fn finish<C: Corners>(
-    corners: C,
-    handles: Vec<u32>,
-    marks: &mut Marks,
-    links: &mut impl Links,
-    paired: &mut Paired,
-    directions: Directions<'_>,
-) {
-    rings::find_pinched(corners, &handles, marks, links, paired);
-    for (vertex, &handle) in handles.iter().enumerate() {
-        if handle != u32::MAX && !marks.is_marked(vertex as u32) {
-            links.sector(vertex as u32, handle);
-        }
-    }
-    drop(handles);
-    if marks.any() {
-        irregular::settle(corners, marks, links, paired, directions);
-    }
 }

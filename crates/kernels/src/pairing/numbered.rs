@@ -1,53 +1,37 @@
-//! Pairing by the edge numbers of the list, where it has them.
+//! Checking the edge numbers of a list.
 
-use super::{Corners, Links, Marks, Paired};
+use super::{Corners, Paired};
+use crate::memory::vec_bytes;
 use merestone_topology::{EdgeUse, FaceListError};
 
-/// Links every plain edge, marks both ends of every other, and returns a corner of every vertex.
-pub(super) fn pair<C: Corners>(
-    corners: C,
-    vertex_count: usize,
-    uses: &[EdgeUse],
-    links: &mut impl Links,
-    marks: &mut Marks,
-    paired: &mut Paired,
-) -> Result<Vec<u32>, FaceListError> {
-    let mut by_edge: Vec<(u32, u32)> = Vec::with_capacity(corners.count());
-    let mut handles = vec![u32::MAX; vertex_count];
-    corners.for_each_use(|number, start, _| {
-        by_edge.push((uses[number as usize].edge(), number));
-        let handle = &mut handles[start as usize];
-        *handle = (*handle).min(number);
+/// Checks that edge numbers have no gap, and that all uses of an edge join the same two vertices
+/// the way they say. O(corners).
+pub(super) fn check<C: Corners>(corners: C, uses: &[EdgeUse]) -> Result<Paired, FaceListError> {
+    // The edge's own two ends as a use of it sees them, and that use.
+    let mut seen: Vec<Option<(u32, u32)>> = Vec::new();
+    let mut fault: Option<(u32, u32)> = None;
+    let count = corners.count();
+    seen.resize(count, None);
+    let mut edges = 0;
+    corners.for_each(|number, _, start, end| {
+        let listed = uses[number as usize];
+        let ends = if listed.runs_with_edge() { (start, end) } else { (end, start) };
+        match seen.get_mut(listed.edge() as usize) {
+            Some(Some(first)) if *first == ends => {}
+            Some(place @ None) => {
+                *place = Some(ends);
+                edges = edges.max(listed.edge() as usize + 1);
+            }
+            _ => fault = fault.or(Some((listed.edge(), number))),
+        }
     });
-    by_edge.sort_unstable();
-    // The edge's own two ends, as a use of it sees them.
-    let ends = |number: u32| {
-        let (start, end) = (corners.vertex(number), corners.vertex(corners.next(number)));
-        if uses[number as usize].runs_with_edge() { (start, end) } else { (end, start) }
-    };
-    for group in by_edge.chunk_by(|a, b| a.0 == b.0) {
-        let (edge, first) = group[0];
-        let odd = group.iter().find(|&&(_, number)| ends(number) != ends(first));
-        if edge as usize != paired.edges || odd.is_some() {
-            let corner = odd.map_or(first, |&(_, number)| number) as usize;
-            return Err(FaceListError::InconsistentEdge {
-                edge: edge.min(paired.edges as u32),
-                corner,
-            });
-        }
-        paired.edges += 1;
-        match *group {
-            [(_, a), (_, b)]
-                if uses[a as usize].runs_with_edge() != uses[b as usize].runs_with_edge() =>
-            {
-                links.plain(a, b);
-            }
-            _ => {
-                marks.mark(ends(first).0);
-                marks.mark(ends(first).1);
-            }
-        }
+    if fault.is_none()
+        && let Some(gap) = seen[..edges].iter().position(Option::is_none)
+    {
+        fault = Some((gap as u32, 0));
     }
-    paired.held(size_of_val(&by_edge[..]) + size_of_val(&handles[..]) + marks.bytes());
-    Ok(handles)
+    if let Some((edge, corner)) = fault {
+        return Err(FaceListError::InconsistentEdge { edge, corner: corner as usize });
+    }
+    Ok(Paired { edges, scratch: vec_bytes(&seen) })
 }

@@ -142,27 +142,17 @@ impl Corners for Sides<'_> {
     }
 
     #[inline(always)]
-    fn vertex(self, c: u32) -> u32 {
-        self.triangles.as_flattened()[c as usize]
-    }
-
-    #[inline(always)]
-    fn next(self, c: u32) -> u32 {
-        next(c)
-    }
-
-    #[inline(always)]
     fn prev(self, c: u32) -> u32 {
         prev(c)
     }
 
     #[inline(always)]
-    fn for_each_use(self, mut f: impl FnMut(u32, u32, u32)) {
+    fn for_each(self, mut f: impl FnMut(u32, u32, u32, u32)) {
         let mut side = 0;
         for &[a, b, c] in self.triangles {
-            f(side, a, b);
-            f(side + 1, b, c);
-            f(side + 2, c, a);
+            f(side, c, a, b);
+            f(side + 1, a, b, c);
+            f(side + 2, b, c, a);
             side += 3;
         }
     }
@@ -170,20 +160,15 @@ impl Corners for Sides<'_> {
 
 impl Links for TriangleAdjacency {
     #[inline(always)]
-    fn plain(&mut self, a: u32, b: u32) {
-        self.turns[a as usize] = next(b);
-        self.turns[b as usize] = next(a);
+    fn turn_to(&mut self, leaving: u32, behind: u32) {
+        self.turns[leaving as usize] = behind;
     }
 
-    fn loose(&mut self, uses: &[u32]) {
+    fn cycle(&mut self, uses: &[u32], is_plain: bool) {
+        let loose = if is_plain { 0 } else { LOOSE };
         for (i, &side) in uses.iter().enumerate() {
-            self.turns[side as usize] = next(uses[(i + 1) % uses.len()]) | LOOSE;
+            self.turns[side as usize] = next(uses[(i + 1) % uses.len()]) | loose;
         }
-    }
-
-    #[inline(always)]
-    fn behind(&self, c: u32) -> u32 {
-        self.turns[c as usize]
     }
 
     #[inline(always)]

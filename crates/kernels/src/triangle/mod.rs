@@ -105,9 +105,7 @@ impl TriangleAdjacency {
 
     /// Makes `uses` the radial cycle of an edge.
     fn link_cycle(&mut self, uses: &[u32]) {
-        match *uses {
-            [a, b] if !self.run_alike(a, b) => self.plain(a, b),
-            _ => self.loose(uses),
-        }
+        let is_plain = matches!(*uses, [a, b] if !self.run_alike(a, b));
+        self.cycle(uses, is_plain);
     }
 }

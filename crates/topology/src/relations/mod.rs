@@ -50,7 +50,7 @@ macro_rules! mapped_walk {
 
             #[inline]
             fn fold<B>(self, $mesh: &K, init: B, mut f: impl FnMut(B, K::$item) -> B) -> B {
-                WalkState::<K>::fold(self.0, $mesh, init, |b, $from| f(b, $map))
+                WalkState::<K>::fold(self.0, $mesh, init, move |b, $from| f(b, $map))
             }
 
             fn lives(&self, mesh: &K) -> bool {

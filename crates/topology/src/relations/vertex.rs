@@ -50,7 +50,7 @@ impl<K: Topology + ?Sized> WalkState<K> for EdgeEndsState<K::OrientedEdge> {
 
     #[inline]
     fn fold<B>(self, mesh: &K, init: B, mut f: impl FnMut(B, Self::Item) -> B) -> B {
-        WalkState::<K>::fold(self.0, mesh, init, |b, spoke| {
+        WalkState::<K>::fold(self.0, mesh, init, move |b, spoke| {
             if stands_for_its_edge(mesh, spoke) { f(b, spoke) } else { b }
         })
     }

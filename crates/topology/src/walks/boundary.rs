@@ -1,6 +1,6 @@
 //! Along a boundary, edge by edge.
 
-use super::{Tally, WalkState, next_corner_around, oriented_edge_lives};
+use super::{Stand, WalkState, next_corner_around};
 use crate::{Id, Topology};
 
 /// The boundary uses met by going along the boundary from one of them.
@@ -9,11 +9,7 @@ use crate::{Id, Topology};
 /// other end. Where neighbours are misoriented it may run some uses from their end to their start.
 /// It ends when it is back at the first use, or where a sector ends at a non-manifold edge.
 #[derive(Clone, Debug, PartialEq, Eq)]
-pub struct BoundaryState<H> {
-    first: H,
-    current: Option<H>,
-    tally: Tally,
-}
+pub struct BoundaryState<H>(Stand<H>);
 
 impl<H: Id> BoundaryState<H> {
     /// From a use of a boundary edge; nothing is walked from any other use.
@@ -22,8 +18,9 @@ impl<H: Id> BoundaryState<H> {
     where
         K: Topology<OrientedEdge = H> + ?Sized,
     {
-        let current = (mesh.radial(first) == first).then_some(first);
-        Self { first, current, tally: Tally::ZERO }
+        let mut stand = Stand::new(first);
+        stand.tally.set_done(mesh.radial(first) != first);
+        Self(stand)
     }
 
     /// The use behind `h`; the tally's direction says whether `h` is run from its end.
@@ -32,7 +29,7 @@ impl<H: Id> BoundaryState<H> {
         K: Topology<OrientedEdge = H> + ?Sized,
     {
         // Enter the sector at the far end of `h` through `h` itself.
-        let mut backward = self.tally.backward();
+        let mut backward = self.0.tally.backward();
         let mut corner = if backward { h } else { mesh.next(h) };
         loop {
             if !backward && let Some(behind) = mesh.turn(corner) {
@@ -44,9 +41,9 @@ impl<H: Id> BoundaryState<H> {
                 None => break,
             }
         }
-        self.tally.set_backward(backward);
+        self.0.tally.set_backward(backward);
         let side = if backward { mesh.prev(corner) } else { corner };
-        (side != self.first && mesh.radial(side) == side).then_some(side)
+        (side != self.0.first && mesh.radial(side) == side).then_some(side)
     }
 }
 
@@ -54,21 +51,22 @@ impl<K: Topology + ?Sized> WalkState<K> for BoundaryState<K::OrientedEdge> {
     type Item = K::OrientedEdge;
 
     fn advance(&mut self, mesh: &K) -> Option<K::OrientedEdge> {
-        let h = self.current?;
-        self.current = self.behind(mesh, h);
-        Some(h)
+        if self.0.tally.done() {
+            return None;
+        }
+        let here = self.0.current;
+        match self.behind(mesh, here) {
+            Some(behind) => self.0.current = behind,
+            None => self.0.tally.set_done(true),
+        }
+        Some(here)
     }
 
     fn lives(&self, mesh: &K) -> bool {
-        self.current
-            .is_none_or(|h| oriented_edge_lives(mesh, h) && oriented_edge_lives(mesh, self.first))
+        self.0.lives(mesh)
     }
 
     fn spend(&mut self, mesh: &K) -> bool {
-        let spent = self.tally.spend(mesh.oriented_edge_bound());
-        if !spent {
-            self.current = None;
-        }
-        spent
+        self.0.spend(mesh)
     }
 }

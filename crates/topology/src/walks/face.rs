@@ -1,21 +1,17 @@
 //! The loops and corners of a face.
 
-use super::{Tally, WalkState, oriented_edge_lives};
+use super::{Stand, WalkState};
 use crate::{FaceBound, Id, Topology};
 
 /// The oriented edges of one loop, in loop order.
 #[derive(Clone, Debug, PartialEq, Eq)]
-pub struct LoopState<H> {
-    first: H,
-    current: Option<H>,
-    tally: Tally,
-}
+pub struct LoopState<H>(Stand<H>);
 
 impl<H: Id> LoopState<H> {
     /// From any oriented edge of the loop.
     #[inline(always)]
     pub fn new(first: H) -> Self {
-        Self { first, current: Some(first), tally: Tally::ZERO }
+        Self(Stand::new(first))
     }
 }
 
@@ -24,36 +20,20 @@ impl<K: Topology + ?Sized> WalkState<K> for LoopState<K::OrientedEdge> {
 
     #[inline]
     fn advance(&mut self, mesh: &K) -> Option<K::OrientedEdge> {
-        let h = self.current?;
-        let behind = mesh.next(h);
-        self.current = (behind != self.first).then_some(behind);
-        Some(h)
+        self.0.advance(|h| mesh.next(h))
     }
 
     #[inline]
-    fn fold<B>(self, mesh: &K, init: B, mut f: impl FnMut(B, K::OrientedEdge) -> B) -> B {
-        let mut accumulated = init;
-        let Some(mut h) = self.current else { return accumulated };
-        loop {
-            accumulated = f(accumulated, h);
-            h = mesh.next(h);
-            if h == self.first {
-                return accumulated;
-            }
-        }
+    fn fold<B>(self, mesh: &K, init: B, f: impl FnMut(B, K::OrientedEdge) -> B) -> B {
+        self.0.fold(init, |h| mesh.next(h), f)
     }
 
     fn lives(&self, mesh: &K) -> bool {
-        self.current
-            .is_none_or(|h| oriented_edge_lives(mesh, h) && oriented_edge_lives(mesh, self.first))
+        self.0.lives(mesh)
     }
 
     fn spend(&mut self, mesh: &K) -> bool {
-        let spent = self.tally.spend(mesh.oriented_edge_bound());
-        if !spent {
-            self.current = None;
-        }
-        spent
+        self.0.spend(mesh)
     }
 }
 

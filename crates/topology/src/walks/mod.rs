@@ -113,7 +113,8 @@ impl<K: ?Sized, S: Debug> Debug for Walk<'_, K, S> {
     }
 }
 
-/// A walk that does not borrow: 12 bytes on dense kernels.
+/// A walk that does not borrow: 12 bytes on dense kernels for a sector, a loop, the uses of an
+/// edge and a boundary loop, a few more for those that go over several of them.
 ///
 /// It stays valid while the oriented edge it will yield next and the one it began at live unmoved.
 /// After other edits it goes on over the topology as it then is; it never yields a cell that is
@@ -166,7 +167,7 @@ pub enum WalkBroken {
     Endless,
 }
 
-/// The steps of a detached walk and four flags, in four bytes.
+/// The steps of a detached walk and five flags, in four bytes.
 #[derive(Clone, Copy, PartialEq, Eq)]
 pub(crate) struct Tally(u32);
 
@@ -175,7 +176,8 @@ impl Tally {
     const REVERSED: u32 = 1 << 30;
     const ENTRY: u32 = 1 << 29;
     const MORE: u32 = 1 << 28;
-    const STEPS: u32 = Self::MORE - 1;
+    const DONE: u32 = 1 << 27;
+    const STEPS: u32 = Self::DONE - 1;
 
     pub(crate) const ZERO: Self = Self(0);
 
@@ -228,13 +230,30 @@ impl Tally {
         self.0 = self.0 & !Self::MORE | if more { Self::MORE } else { 0 };
     }
 
+    /// Whether this is anything but a forward walk of one sector that is not at its end.
+    #[inline(always)]
+    pub(crate) fn has_flags(self) -> bool {
+        self.0 & !Self::STEPS != 0
+    }
+
+    /// The walk is at its end.
+    #[inline(always)]
+    pub(crate) fn done(self) -> bool {
+        self.0 & Self::DONE != 0
+    }
+
+    #[inline(always)]
+    pub(crate) fn set_done(&mut self, done: bool) {
+        self.0 = self.0 & !Self::DONE | if done { Self::DONE } else { 0 };
+    }
+
     /// The steps alone, for the next sector.
     #[inline(always)]
     pub(crate) fn without_flags(self) -> Self {
         Self(self.0 & Self::STEPS)
     }
 
-    /// Counts a step; `false` beyond `bound` steps, or 2²⁸ − 1 of them.
+    /// Counts a step; `false` beyond `bound` steps, or 2²⁷ − 1 of them.
     pub(crate) fn spend(&mut self, bound: usize) -> bool {
         let steps = self.0 & Self::STEPS;
         if steps as usize > bound || steps == Self::STEPS {
@@ -253,6 +272,7 @@ impl Debug for Tally {
             (self.reversed(), ", reversed"),
             (self.entry(), ", entry"),
             (self.more(), ", more"),
+            (self.done(), ", done"),
         ] {
             if set {
                 f.write_str(name)?;
@@ -262,7 +282,68 @@ impl Debug for Tally {
     }
 }
 
-/// Whether `h` lives.
-pub(crate) fn oriented_edge_lives<K: Topology + ?Sized>(mesh: &K, h: K::OrientedEdge) -> bool {
-    mesh.oriented_edge_at(crate::Id::index(h)) == Some(h)
+/// A state that stands on one oriented edge and began at another: what most local walks are.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(crate) struct Stand<H> {
+    pub(crate) first: H,
+    /// What is yielded next, unless the tally says done.
+    pub(crate) current: H,
+    pub(crate) tally: Tally,
+}
+
+impl<H: crate::Id> Stand<H> {
+    #[inline(always)]
+    pub(crate) fn new(first: H) -> Self {
+        Self { first, current: first, tally: Tally::ZERO }
+    }
+
+    /// What is yielded now, after which `behind` tells where the walk stands next; it is over when
+    /// that is where it began.
+    #[inline(always)]
+    pub(crate) fn advance(&mut self, behind: impl FnOnce(H) -> H) -> Option<H> {
+        if self.tally.done() {
+            return None;
+        }
+        let here = self.current;
+        self.current = behind(here);
+        self.tally.set_done(self.current == self.first);
+        Some(here)
+    }
+
+    /// Everything left, each followed by what `behind` says, until the walk is where it began.
+    #[inline(always)]
+    pub(crate) fn fold<B>(
+        self,
+        init: B,
+        behind: impl Fn(H) -> H,
+        mut f: impl FnMut(B, H) -> B,
+    ) -> B {
+        let mut accumulated = init;
+        if self.tally.done() {
+            return accumulated;
+        }
+        let mut here = self.current;
+        loop {
+            accumulated = f(accumulated, here);
+            here = behind(here);
+            if here == self.first {
+                return accumulated;
+            }
+        }
+    }
+
+    pub(crate) fn lives<K: Topology<OrientedEdge = H> + ?Sized>(&self, mesh: &K) -> bool {
+        self.tally.done()
+            || [self.first, self.current]
+                .iter()
+                .all(|h| mesh.oriented_edge_at(h.index()) == Some(*h))
+    }
+
+    pub(crate) fn spend<K: Topology<OrientedEdge = H> + ?Sized>(&mut self, mesh: &K) -> bool {
+        let spent = self.tally.spend(mesh.oriented_edge_bound());
+        if !spent {
+            self.tally.set_done(true);
+        }
+        spent
+    }
 }

@@ -1,22 +1,17 @@
 //! One sector, corner by corner, and the handles of a vertex's sectors.
 
-use super::{Tally, WalkState, next_corner_around, oriented_edge_lives};
+use super::{Stand, WalkState, next_corner_around};
 use crate::{Id, Topology};
 
 /// The corners of one sector, in turn order from its handle.
 #[derive(Clone, Debug, PartialEq, Eq)]
-pub struct SectorState<H> {
-    pub(super) first: H,
-    /// What is yielded next.
-    pub(super) current: Option<H>,
-    pub(super) tally: Tally,
-}
+pub struct SectorState<H>(pub(super) Stand<H>);
 
 impl<H: Id> SectorState<H> {
     /// From a sector's handle.
     #[inline(always)]
     pub fn new(handle: H) -> Self {
-        Self { first: handle, current: Some(handle), tally: Tally::ZERO }
+        Self(Stand::new(handle))
     }
 
     /// From the first sector of `vertex`, knowing whether others follow.
@@ -26,7 +21,7 @@ impl<H: Id> SectorState<H> {
         K: Topology<OrientedEdge = H> + ?Sized,
     {
         let mut state = Self::new(mesh.sector(vertex, 0)?);
-        state.tally.set_more(mesh.sector(vertex, 1).is_some());
+        state.0.tally.set_more(mesh.sector(vertex, 1).is_some());
         Some(state)
     }
 
@@ -36,62 +31,112 @@ impl<H: Id> SectorState<H> {
     where
         K: Topology<OrientedEdge = H> + ?Sized,
     {
-        if self.tally.more() { self.find_next_sector(mesh) } else { None }
+        if self.0.tally.more() { self.find_next_sector(mesh) } else { None }
     }
 
     /// Finds this sector's number by its handle: rare enough not to spend four bytes on it.
     #[cold]
+    #[inline(never)]
     fn find_next_sector<K>(&self, mesh: &K) -> Option<Self>
     where
         K: Topology<OrientedEdge = H> + ?Sized,
     {
-        let vertex = mesh.start(self.first);
+        let vertex = mesh.start(self.0.first);
         let mut number = 0;
-        while mesh.sector(vertex, number)? != self.first {
+        while mesh.sector(vertex, number)? != self.0.first {
             number += 1;
         }
-        let handle = mesh.sector(vertex, number + 1)?;
-        let mut tally = self.tally.without_flags();
-        tally.set_more(mesh.sector(vertex, number + 2).is_some());
-        Some(Self { first: handle, current: Some(handle), tally })
+        let mut stand = Stand::new(mesh.sector(vertex, number + 1)?);
+        stand.tally = self.0.tally.without_flags();
+        stand.tally.set_more(mesh.sector(vertex, number + 2).is_some());
+        Some(Self(stand))
     }
 
-    /// The corner behind `h`, when `turn` has no answer.
-    pub(super) fn around<K: Topology<OrientedEdge = H> + ?Sized>(
-        &mut self,
-        mesh: &K,
-        h: H,
-    ) -> Option<H> {
-        let backward = self.tally.backward();
-        let mut step = next_corner_around(mesh, h, backward);
-        if step.is_none() && h == self.first && !backward {
+    /// Moves to the corner behind the current one where `turn` has no answer, or to the end.
+    #[cold]
+    #[inline(never)]
+    pub(super) fn step_around<K: Topology<OrientedEdge = H> + ?Sized>(&mut self, mesh: &K) {
+        let Stand { first, current, tally } = &mut self.0;
+        let backward = tally.backward();
+        let mut step = next_corner_around(mesh, *current, backward);
+        if step.is_none() && current == first && !backward {
             // A handle whose outgoing side is the end: the sector lies behind its incoming side.
-            step = next_corner_around(mesh, h, true);
+            step = next_corner_around(mesh, *current, true);
             if step.is_some() {
-                self.tally.set_reversed();
+                tally.set_reversed();
             }
         }
         match step {
             Some((corner, backward)) => {
-                self.tally.set_backward(backward);
-                (corner != self.first).then_some(corner)
+                tally.set_backward(backward);
+                tally.set_done(corner == *first);
+                *current = corner;
             }
             None => {
-                self.tally.set_entry();
-                None
+                tally.set_entry();
+                tally.set_done(true);
             }
         }
     }
 
+    /// Moves to the corner behind the current one, or to the end.
     #[inline(always)]
-    fn behind<K: Topology<OrientedEdge = H> + ?Sized>(&mut self, mesh: &K, h: H) -> Option<H> {
-        if !self.tally.backward()
-            && let Some(corner) = mesh.turn(h)
+    pub(super) fn step<K: Topology<OrientedEdge = H> + ?Sized>(&mut self, mesh: &K) {
+        if !self.0.tally.backward()
+            && let Some(corner) = mesh.turn(self.0.current)
         {
-            return (corner != self.first).then_some(corner);
+            self.0.current = corner;
+            self.0.tally.set_done(corner == self.0.first);
+        } else {
+            self.step_around(mesh);
         }
-        self.around(mesh, h)
     }
+
+    /// Folds what is left of the sector, each corner as `item` says. Where `turn` has no answer, or
+    /// the tally says that there is more to it, `rest` takes over: a cold function, so that the hot
+    /// stretch here is one load and one test a corner and everything stays in registers.
+    #[inline(always)]
+    pub(super) fn fold_turns<B, T, F: FnMut(B, T) -> B, K>(
+        mut self,
+        mesh: &K,
+        mut accumulated: B,
+        mut f: F,
+        item: impl Fn(H) -> T,
+        rest: impl FnOnce(Self, B, F) -> B,
+    ) -> B
+    where
+        K: Topology<OrientedEdge = H> + ?Sized,
+    {
+        if self.0.tally.has_flags() {
+            return rest(self, accumulated, f);
+        }
+        let mut here = self.0.current;
+        while let Some(behind) = mesh.turn(here) {
+            accumulated = f(accumulated, item(here));
+            if behind == self.0.first {
+                return accumulated;
+            }
+            here = behind;
+        }
+        self.0.current = here;
+        rest(self, accumulated, f)
+    }
+}
+
+/// Folds the slow way, step by step.
+#[cold]
+#[inline(never)]
+pub(super) fn fold_rest<K: Topology + ?Sized, S: WalkState<K>, B>(
+    mesh: &K,
+    mut state: S,
+    init: B,
+    mut f: impl FnMut(B, S::Item) -> B,
+) -> B {
+    let mut accumulated = init;
+    while let Some(item) = state.advance(mesh) {
+        accumulated = f(accumulated, item);
+    }
+    accumulated
 }
 
 impl<K: Topology + ?Sized> WalkState<K> for SectorState<K::OrientedEdge> {
@@ -99,44 +144,25 @@ impl<K: Topology + ?Sized> WalkState<K> for SectorState<K::OrientedEdge> {
 
     #[inline]
     fn advance(&mut self, mesh: &K) -> Option<K::OrientedEdge> {
-        let h = self.current?;
-        self.current = self.behind(mesh, h);
-        Some(h)
+        if self.0.tally.done() {
+            return None;
+        }
+        let here = self.0.current;
+        self.step(mesh);
+        Some(here)
     }
 
     #[inline]
-    fn fold<B>(mut self, mesh: &K, init: B, mut f: impl FnMut(B, K::OrientedEdge) -> B) -> B {
-        let mut accumulated = init;
-        while let Some(mut h) = self.current {
-            if !self.tally.backward() {
-                // The hot stretch: one load and one test a corner.
-                loop {
-                    accumulated = f(accumulated, h);
-                    match mesh.turn(h) {
-                        Some(corner) if corner == self.first => return accumulated,
-                        Some(corner) => h = corner,
-                        None => break,
-                    }
-                }
-            } else {
-                accumulated = f(accumulated, h);
-            }
-            self.current = self.around(mesh, h);
-        }
-        accumulated
+    fn fold<B>(self, mesh: &K, init: B, f: impl FnMut(B, K::OrientedEdge) -> B) -> B {
+        self.fold_turns(mesh, init, f, |h| h, |rest, b, f| fold_rest(mesh, rest, b, f))
     }
 
     fn lives(&self, mesh: &K) -> bool {
-        self.current
-            .is_none_or(|h| oriented_edge_lives(mesh, h) && oriented_edge_lives(mesh, self.first))
+        self.0.lives(mesh)
     }
 
     fn spend(&mut self, mesh: &K) -> bool {
-        let spent = self.tally.spend(mesh.oriented_edge_bound());
-        if !spent {
-            self.current = None;
-        }
-        spent
+        self.0.spend(mesh)
     }
 }
 
@@ -148,8 +174,9 @@ pub struct SectorHandlesState<V> {
 }
 
 impl<V: Id> SectorHandlesState<V> {
+    /// From a vertex.
     #[inline(always)]
-    pub(crate) fn new(vertex: V) -> Self {
+    pub fn new(vertex: V) -> Self {
         Self { vertex, number: 0 }
     }
 }

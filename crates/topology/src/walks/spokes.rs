@@ -1,5 +1,6 @@
 //! The sides around a vertex: every edge end of a sector once, with its direction.
 
+use super::sector::fold_rest;
 use super::{SectorState, WalkState};
 use crate::{Id, Topology};
 
@@ -34,6 +35,18 @@ impl<H: Id> SpokesState<H> {
     {
         Self(SectorState::first_of(mesh, vertex))
     }
+
+    /// From a sector of a vertex and on to those that follow.
+    fn from_sector<K>(mesh: &K, sector: SectorState<H>) -> Self
+    where
+        K: Topology<OrientedEdge = H> + ?Sized,
+    {
+        if sector.0.tally.done() && !sector.0.tally.entry() {
+            Self(sector.next_sector(mesh))
+        } else {
+            Self(Some(sector))
+        }
+    }
 }
 
 /// The side `corner` is left by.
@@ -52,31 +65,7 @@ fn entry<K: Topology + ?Sized>(
     sector: &SectorState<K::OrientedEdge>,
 ) -> Spoke<K::OrientedEdge> {
     // A walk that began backward left its first corner by the incoming side.
-    exit(mesh, sector.first, !sector.tally.reversed())
-}
-
-/// One step in `sector`: the exit of the current corner, or the entry of an open sector's first.
-#[inline(always)]
-fn step<K: Topology + ?Sized>(
-    mesh: &K,
-    sector: &mut SectorState<K::OrientedEdge>,
-) -> Option<Spoke<K::OrientedEdge>> {
-    let Some(corner) = sector.current else {
-        return sector.tally.entry().then(|| {
-            sector.tally.clear_entry();
-            entry(mesh, sector)
-        });
-    };
-    if !sector.tally.backward()
-        && let Some(behind) = mesh.turn(corner)
-    {
-        sector.current = (behind != sector.first).then_some(behind);
-        return Some(Spoke { oriented_edge: corner, outgoing: true });
-    }
-    let was_backward = sector.tally.backward();
-    sector.current = sector.around(mesh, corner);
-    let turned_back = corner == sector.first && sector.tally.reversed();
-    Some(exit(mesh, corner, was_backward || turned_back))
+    exit(mesh, sector.0.first, !sector.0.tally.reversed())
 }
 
 impl<K: Topology + ?Sized> WalkState<K> for SpokesState<K::OrientedEdge> {
@@ -85,37 +74,29 @@ impl<K: Topology + ?Sized> WalkState<K> for SpokesState<K::OrientedEdge> {
     #[inline]
     fn advance(&mut self, mesh: &K) -> Option<Spoke<K::OrientedEdge>> {
         let sector = self.0.as_mut()?;
-        let spoke = step(mesh, sector);
-        if sector.current.is_none() && !sector.tally.entry() {
+        let spoke = if sector.0.tally.done() {
+            // Its corners are through, and what is left is where it was entered.
+            sector.0.tally.clear_entry();
+            entry(mesh, sector)
+        } else {
+            let corner = sector.0.current;
+            let was_backward = sector.0.tally.backward();
+            sector.step(mesh);
+            let turned_back = corner == sector.0.first && sector.0.tally.reversed();
+            exit(mesh, corner, was_backward || turned_back)
+        };
+        if sector.0.tally.done() && !sector.0.tally.entry() {
             self.0 = sector.next_sector(mesh);
         }
-        spoke
+        Some(spoke)
     }
 
     #[inline]
-    fn fold<B>(self, mesh: &K, init: B, mut f: impl FnMut(B, Self::Item) -> B) -> B {
-        let mut accumulated = init;
-        let mut left = self.0;
-        'sectors: while let Some(mut sector) = left {
-            left = sector.next_sector(mesh);
-            if let Some(mut h) = sector.current
-                && !sector.tally.backward()
-            {
-                // The hot stretch: one load and one test a corner.
-                while let Some(behind) = mesh.turn(h) {
-                    accumulated = f(accumulated, Spoke { oriented_edge: h, outgoing: true });
-                    if behind == sector.first {
-                        continue 'sectors;
-                    }
-                    h = behind;
-                }
-                sector.current = Some(h);
-            }
-            while let Some(spoke) = step(mesh, &mut sector) {
-                accumulated = f(accumulated, spoke);
-            }
-        }
-        accumulated
+    fn fold<B>(self, mesh: &K, init: B, f: impl FnMut(B, Self::Item) -> B) -> B {
+        let Some(sector) = self.0 else { return init };
+        let outgoing = |h| Spoke { oriented_edge: h, outgoing: true };
+        let rest = move |rest, b, f| fold_rest(mesh, Self::from_sector(mesh, rest), b, f);
+        sector.fold_turns(mesh, init, f, outgoing, rest)
     }
 
     fn lives(&self, mesh: &K) -> bool {

@@ -1,21 +1,17 @@
 //! All uses of an edge, radially.
 
-use super::{Tally, WalkState, oriented_edge_lives};
+use super::{Stand, WalkState};
 use crate::{Id, Topology};
 
 /// The uses of an edge, in radial order from one of them.
 #[derive(Clone, Debug, PartialEq, Eq)]
-pub struct UsesState<H> {
-    first: H,
-    current: Option<H>,
-    tally: Tally,
-}
+pub struct UsesState<H>(Stand<H>);
 
 impl<H: Id> UsesState<H> {
     /// From any use of the edge.
     #[inline(always)]
     pub fn new(first: H) -> Self {
-        Self { first, current: Some(first), tally: Tally::ZERO }
+        Self(Stand::new(first))
     }
 }
 
@@ -24,22 +20,19 @@ impl<K: Topology + ?Sized> WalkState<K> for UsesState<K::OrientedEdge> {
 
     #[inline]
     fn advance(&mut self, mesh: &K) -> Option<K::OrientedEdge> {
-        let h = self.current?;
-        let behind = mesh.radial(h);
-        self.current = (behind != self.first).then_some(behind);
-        Some(h)
+        self.0.advance(|h| mesh.radial(h))
+    }
+
+    #[inline]
+    fn fold<B>(self, mesh: &K, init: B, f: impl FnMut(B, K::OrientedEdge) -> B) -> B {
+        self.0.fold(init, |h| mesh.radial(h), f)
     }
 
     fn lives(&self, mesh: &K) -> bool {
-        self.current
-            .is_none_or(|h| oriented_edge_lives(mesh, h) && oriented_edge_lives(mesh, self.first))
+        self.0.lives(mesh)
     }
 
     fn spend(&mut self, mesh: &K) -> bool {
-        let spent = self.tally.spend(mesh.oriented_edge_bound());
-        if !spent {
-            self.current = None;
-        }
-        spent
+        self.0.spend(mesh)
     }
 }

@@ -1,5 +1,6 @@
 //! All corners of a vertex, sector by sector.
 
+use super::sector::fold_rest;
 use super::{SectorState, WalkState};
 use crate::{Id, Topology};
 
@@ -16,6 +17,14 @@ impl<H: Id> VertexCornersState<H> {
     {
         Self(SectorState::first_of(mesh, vertex))
     }
+
+    /// From a sector of a vertex and on to those that follow.
+    fn from_sector<K>(mesh: &K, sector: SectorState<H>) -> Self
+    where
+        K: Topology<OrientedEdge = H> + ?Sized,
+    {
+        if sector.0.tally.done() { Self(sector.next_sector(mesh)) } else { Self(Some(sector)) }
+    }
 }
 
 impl<K: Topology + ?Sized> WalkState<K> for VertexCornersState<K::OrientedEdge> {
@@ -25,21 +34,17 @@ impl<K: Topology + ?Sized> WalkState<K> for VertexCornersState<K::OrientedEdge> 
     fn advance(&mut self, mesh: &K) -> Option<K::OrientedEdge> {
         let sector = self.0.as_mut()?;
         let corner = WalkState::<K>::advance(sector, mesh);
-        if sector.current.is_none() {
+        if sector.0.tally.done() {
             self.0 = sector.next_sector(mesh);
         }
         corner
     }
 
     #[inline]
-    fn fold<B>(self, mesh: &K, init: B, mut f: impl FnMut(B, K::OrientedEdge) -> B) -> B {
-        let mut accumulated = init;
-        let mut sector = self.0;
-        while let Some(state) = sector {
-            sector = state.next_sector(mesh);
-            accumulated = WalkState::<K>::fold(state, mesh, accumulated, &mut f);
-        }
-        accumulated
+    fn fold<B>(self, mesh: &K, init: B, f: impl FnMut(B, K::OrientedEdge) -> B) -> B {
+        let Some(sector) = self.0 else { return init };
+        let rest = move |rest, b, f| fold_rest(mesh, Self::from_sector(mesh, rest), b, f);
+        sector.fold_turns(mesh, init, f, |h| h, rest)
     }
 
     fn lives(&self, mesh: &K) -> bool {
