@@ -4,8 +4,10 @@
 mod column;
 mod contract;
 mod face_list;
+pub mod floods;
 mod id;
 pub mod relations;
+pub mod views;
 pub mod walks;
 
 pub use column::{Column, Correspondence};

@@ -101,6 +101,12 @@ pub trait TopologyExt: Topology {
         Walk::new(self, SpokesState::new(self, v))
     }
 
+    /// The sides around one sector, as [`vertex_spokes`](Self::vertex_spokes) lists them.
+    #[inline]
+    fn sector_spokes(&self, handle: Self::OrientedEdge) -> walk!(Self, SpokesState<OrientedEdge>) {
+        Walk::new(self, SpokesState::of_sector(handle))
+    }
+
     /// The edge ends at a vertex, each exactly once: as [`vertex_spokes`](Self::vertex_spokes), but a non-manifold
     /// edge that several sectors end at comes once. An edge from `v` to `v` has two ends here.
     #[inline]

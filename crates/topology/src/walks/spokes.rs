@@ -36,6 +36,12 @@ impl<H: Id> SpokesState<H> {
         Self(SectorState::first_of(mesh, vertex))
     }
 
+    /// From the handle of a sector, and that sector only.
+    #[inline(always)]
+    pub fn of_sector(handle: H) -> Self {
+        Self(Some(SectorState::new(handle)))
+    }
+
     /// From a sector of a vertex and on to those that follow.
     fn from_sector<K>(mesh: &K, sector: SectorState<H>) -> Self
     where
