@@ -1,11 +1,13 @@
 //! Components: faces joined through shared edges.
 //!
-//! With adjacency given, breadth-first is the fastest, a block of faces at a time: first the
-//! neighbours of the whole block are gathered, then those without a label are picked out, then
-//! these enter the queue. What is picked or queued is written in any case and kept by moving the
-//! end on by 0 or 1, so no branch is left to guess, and the loads of a whole block overlap.
-//! Union-find needs no queue, but guesses wrong once or twice a face (Rem's algorithm, in Dijkstra
-//! 1976; with splicing, Patwary, Blair & Manne 2010).
+//! With adjacency given, two ways, and the mesh decides: union-find over the faces where faces
+//! that meet lie close in memory (it streams), breadth-first where they do not (the loads of a
+//! whole block of faces overlap, and no branch is left to guess). Both number the components by
+//! their smallest faces, so the choice does not show.
+//!
+//! Union-find is Rem's algorithm (in Dijkstra 1976) with splicing (Patwary, Blair & Manne 2010).
+//! Parents are never greater than their children, so one ascending pass at the end turns parents
+//! into labels.
 
 use super::assemble::{Adjacency, NONE, NOT_PLAIN};
 use super::half_edge::HalfEdges;
@@ -13,76 +15,69 @@ use super::half_edge::HalfEdges;
 /// Places in the table of neighbours.
 const TABLE: usize = 1024;
 
-/// Labels the faces of triangle adjacency by component; returns how many there are. O(F).
+/// Labels the faces of triangle adjacency by component the faster way; returns how many there are.
 ///
-/// Components are numbered by their smallest faces. The queue is scratch memory.
+/// Components are numbered by their smallest faces. The queue is scratch memory. Nearly O(F).
 ///
 /// # Panics
 /// When a turn names a side that is not there.
+///
+/// ```
+/// use merestone_trial::bare::{assemble, components};
+///
+/// // Two triangles that share an edge, and one that only touches them at vertex 3.
+/// let triangles = [[0, 1, 2], [2, 1, 3], [3, 4, 5]];
+/// let mut mesh = assemble::Adjacency::default();
+/// assemble::assemble(&triangles, 6, &mut Default::default(), &mut mesh)?;
+/// let (mut labels, mut queue) = (Vec::new(), Vec::new());
+/// assert_eq!(components::by_turns(&mesh, &mut labels, &mut queue), 2);
+/// assert_eq!(labels, [0, 0, 1]);
+/// # Ok::<(), assemble::AssembleError>(())
+/// ```
 pub fn by_turns(mesh: &Adjacency, labels: &mut Vec<u32>, queue: &mut Vec<u32>) -> u32 {
-    let turns = mesh.turn.as_chunks::<3>().0;
-    breadth_first(turns.len(), labels, queue, |t, near| {
-        near.extend(turns[t as usize].map(|turn| (turn & !NOT_PLAIN) / 3));
-    })
+    if is_coherent(mesh) {
+        by_turns_union(mesh, labels)
+    } else {
+        by_turns_breadth_first(mesh, labels, queue)
+    }
 }
 
-/// The same by union-find over the faces.
+/// Whether most of some 256 sampled faces meet others near them in the order of faces.
+fn is_coherent(mesh: &Adjacency) -> bool {
+    let turns = mesh.turn.as_chunks::<3>().0;
+    let near = (turns.len() / 16) as u32;
+    let step = (turns.len() / 256).max(1);
+    let sampled = (0u32..).zip(turns).step_by(step);
+    let balance: i32 = sampled
+        .flat_map(|(t, sides)| sides.map(|turn| ((turn & !NOT_PLAIN) / 3).abs_diff(t) <= near))
+        .map(|is_near| if is_near { 1 } else { -1 })
+        .sum();
+    balance >= 0
+}
+
+/// Faces of the queue taken at once.
+const BLOCK: usize = 32;
+
+/// The same breadth-first, a block of faces at a time. O(F).
 ///
 /// # Panics
 /// When a turn names a side that is not there.
-pub fn by_turns_union(mesh: &Adjacency, labels: &mut Vec<u32>) -> u32 {
-    alone(labels, mesh.turn.len() / 3);
-    for (t, sides) in (0u32..).zip(mesh.turn.as_chunks::<3>().0) {
-        for &turn in sides {
-            let other = (turn & !NOT_PLAIN) / 3;
-            // A plain edge joins once, at its greater face; a longer cycle joins at every use.
-            if other < t || turn & NOT_PLAIN != 0 {
-                unite(labels, t, other);
-            }
-        }
-    }
-    number(labels)
-}
-
-/// Labels the faces of half-edges by component; returns how many there are. O(corners).
-///
-/// # Panics
-/// When a link names a half-edge or face that is not there.
-pub fn by_half_edges(mesh: &HalfEdges, labels: &mut Vec<u32>, queue: &mut Vec<u32>) -> u32 {
-    breadth_first(mesh.face_first.len(), labels, queue, |face, near| {
-        let first = mesh.face_first[face as usize];
-        if first == NONE {
-            return;
-        }
-        let mut here = first;
-        loop {
-            near.push(mesh.face[(mesh.radial[here as usize] & !NOT_PLAIN) as usize]);
-            here = mesh.next[here as usize];
-            if here == first {
-                break;
-            }
-        }
-    })
-}
-
-/// Sides gathered per block, about.
-const BLOCK: usize = 96;
-
-/// Labels what `neighbours` reaches from each seed in turn.
-#[inline]
-fn breadth_first(
-    faces: usize,
+pub fn by_turns_breadth_first(
+    mesh: &Adjacency,
     labels: &mut Vec<u32>,
     queue: &mut Vec<u32>,
-    neighbours: impl Fn(u32, &mut Vec<u32>),
 ) -> u32 {
+    let turns = mesh.turn.as_chunks::<3>().0;
     labels.clear();
-    labels.resize(faces, NONE);
+    labels.resize(turns.len(), NONE);
+    let labels = &mut labels[..];
     // One place more than faces: what is already labelled is written there too, and forgotten.
-    queue.resize(faces + 1, 0);
-    let mut near = Vec::with_capacity(2 * BLOCK);
+    queue.resize(turns.len() + 1, 0);
+    let queue = &mut queue[..];
+    let mut near = [[0; 3]; BLOCK];
+    let mut picked = [0; 3 * BLOCK];
     let mut count = 0;
-    for seed in 0..faces {
+    for seed in 0..turns.len() {
         if labels[seed] != NONE {
             continue;
         }
@@ -90,19 +85,18 @@ fn breadth_first(
         queue[0] = seed as u32;
         let (mut at, mut end) = (0, 1);
         while at < end {
-            near.clear();
-            while at < end && near.len() < BLOCK {
-                neighbours(queue[at], &mut near);
-                at += 1;
+            let block = &queue[at..end.min(at + BLOCK)];
+            at += block.len();
+            for (near, &t) in near.iter_mut().zip(block) {
+                *near = turns[t as usize].map(|turn| (turn & !NOT_PLAIN) / 3);
             }
             // No label is written here: else each load would wait for the stores before it.
-            let mut picked = 0;
-            for k in 0..near.len() {
-                let other = near[k];
-                near[picked] = other;
-                picked += usize::from(labels[other as usize] == NONE);
+            let mut kept = 0;
+            for &other in near[..block.len()].as_flattened() {
+                picked[kept] = other;
+                kept += usize::from(labels[other as usize] == NONE);
             }
-            for &other in &near[..picked] {
+            for &other in &picked[..kept] {
                 let label = &mut labels[other as usize];
                 queue[end] = other;
                 end += usize::from(*label == NONE);
@@ -112,6 +106,52 @@ fn breadth_first(
         count += 1;
     }
     count
+}
+
+/// The same by union-find over the faces.
+///
+/// # Panics
+/// When a turn names a side that is not there.
+pub fn by_turns_union(mesh: &Adjacency, labels: &mut Vec<u32>) -> u32 {
+    let turns = mesh.turn.as_chunks::<3>().0;
+    alone(labels, turns.len());
+    for (t, &sides) in (0u32..).zip(turns) {
+        // Greater neighbours will join when it is their turn: until then t stands in for them.
+        let others = sides.map(|turn| ((turn & !NOT_PLAIN) / 3).min(t));
+        let roots = others.map(|other| labels[other as usize]);
+        let least = roots[0].min(roots[1]).min(roots[2]);
+        labels[t as usize] = least;
+        for k in 0..3 {
+            if roots[k] != least && roots[k] != t {
+                unite(labels, t, others[k]);
+            }
+        }
+    }
+    if mesh.counts.non_manifold > 0 {
+        // Around a longer cycle not every use meets a smaller one: join each with the next.
+        for (t, sides) in (0u32..).zip(turns) {
+            for &turn in sides.iter().filter(|&turn| turn & NOT_PLAIN != 0) {
+                unite(labels, t, (turn & !NOT_PLAIN) / 3);
+            }
+        }
+    }
+    number(labels)
+}
+
+/// Labels the faces of half-edges by component, by union-find; returns how many. O(corners).
+///
+/// # Panics
+/// When a link names a half-edge or face that is not there.
+pub fn by_half_edges(mesh: &HalfEdges, labels: &mut Vec<u32>) -> u32 {
+    alone(labels, mesh.face_first.len());
+    for (&face, &radial) in mesh.face.iter().zip(&mesh.radial) {
+        let other = mesh.face[(radial & !NOT_PLAIN) as usize];
+        // A plain edge joins once, at its greater face; a longer cycle joins at every use.
+        if other < face || radial & NOT_PLAIN != 0 {
+            unite(labels, face, other);
+        }
+    }
+    number(labels)
 }
 
 /// Reusable scratch memory of [`from_loops`].
@@ -327,9 +367,11 @@ mod tests {
         let queue = &mut Vec::new();
         assert_eq!(by_turns(&links, &mut labels, queue), count);
         assert_eq!(labels, expected);
+        assert_eq!(by_turns_breadth_first(&links, &mut labels, queue), count);
+        assert_eq!(labels, expected);
         assert_eq!(by_turns_union(&links, &mut labels), count);
         assert_eq!(labels, expected);
-        assert_eq!(by_half_edges(&half, &mut labels, queue), count);
+        assert_eq!(by_half_edges(&half, &mut labels), count);
         assert_eq!(labels, expected);
         let scratch = &mut Scratch::default();
         assert_eq!(from_loops(corners, ends, vertices, scratch, &mut labels), count);
