@@ -29,6 +29,17 @@ impl FaceListBuf {
         Self { vertex_count, ..Self::default() }
     }
 
+    /// An empty list with room for `faces` loops of `corners` corners in all.
+    #[must_use]
+    pub fn with_capacity(vertex_count: usize, faces: usize, corners: usize) -> Self {
+        Self {
+            vertex_count,
+            corners: Vec::with_capacity(corners),
+            loop_ends: Vec::with_capacity(faces),
+            ..Self::default()
+        }
+    }
+
     /// A list of one loop a face from arrays that stand already.
     ///
     /// # Errors
@@ -51,6 +62,24 @@ impl FaceListBuf {
     /// Changes how many vertices there are; corners beyond are refused where the list is assembled.
     pub fn set_vertex_count(&mut self, vertex_count: usize) {
         self.vertex_count = vertex_count;
+    }
+
+    /// Gives every corner the vertex number that `renumber` makes of its old one, in place.
+    ///
+    /// Edge numbers stay as they are. O(corners).
+    ///
+    /// ```
+    /// use merestone_topology::FaceListBuf;
+    /// let mut list = FaceListBuf::new(4);
+    /// list.push_face(&[0, 1, 3]);
+    /// list.renumber(3, |vertex| vertex.min(2));
+    /// assert_eq!(list.as_list().corners(), [0, 1, 2]);
+    /// ```
+    pub fn renumber(&mut self, vertex_count: usize, renumber: impl Fn(u32) -> u32) {
+        self.vertex_count = vertex_count;
+        for corner in &mut self.corners {
+            *corner = renumber(*corner);
+        }
     }
 
     /// Adds a face with one outer loop. Without corners nothing is added.
