@@ -8,7 +8,7 @@ impl PolygonSoup {
     /// `+0` and `−0` are equal. The first record of each vertex decides its place in the order and
     /// its attributes. Returns the welded soup and, for every record, the vertex it became.
     /// No tolerance is involved, so the result does not depend on the order of the tests.
-    /// A NaN is taken by its bits; [`clean`](Self::clean) refuses it afterwards.
+    /// A NaN is equal to nothing; [`clean`](Self::clean) refuses it afterwards.
     ///
     /// O(records) for files as they occur, O(records · log records) for one made to defeat the
     /// hash. See [the module](self) for an example.
@@ -48,17 +48,33 @@ fn firsts(vertex_of: &[u32]) -> Vec<u32> {
 
 /// Welds in place: afterwards `points` holds each different point once. Returns the map.
 fn weld(points: &mut Vec<[f64; 3]>) -> Vec<u32> {
-    let map = by_table(points).unwrap_or_else(|| by_sorting(points));
-    let mut count = 0;
-    for (record, &vertex) in map.iter().enumerate() {
-        if vertex as usize == count {
-            points[count] = points[record];
-            count += 1;
+    let Welded { map, count } = by_table(points).unwrap_or_else(|partial| {
+        // Records the table has seen are where their vertices are now.
+        let point = |record: usize| match partial.map.get(record) {
+            Some(&vertex) => points[vertex as usize],
+            None => points[record],
+        };
+        let records: Vec<[f64; 3]> = (0..points.len()).map(point).collect();
+        let welded = by_sorting(&records);
+        let mut count = 0;
+        for (record, &vertex) in welded.map.iter().enumerate() {
+            if vertex as usize == count {
+                points[count] = records[record];
+                count += 1;
+            }
         }
-    }
+        welded
+    });
     points.truncate(count);
     points.shrink_to_fit();
     map
+}
+
+/// For each record its vertex, and how many vertices there are.
+#[derive(Debug, PartialEq)]
+struct Welded {
+    map: Vec<u32>,
+    count: usize,
 }
 
 /// The coordinates' bits, with one zero.
@@ -88,12 +104,11 @@ const FREE: u64 = u64::MAX;
 /// a look at the point, and doubling needs no look at all.
 struct Table {
     slots: Vec<u64>,
-    filled: usize,
 }
 
 impl Table {
     fn new(capacity: usize) -> Self {
-        Self { slots: vec![FREE; capacity.next_power_of_two().max(16)], filled: 0 }
+        Self { slots: vec![FREE; capacity.next_power_of_two().max(16)] }
     }
 
     #[inline(always)]
@@ -116,52 +131,76 @@ impl Table {
     }
 }
 
-/// The map by an open table; `None` where so many probes were needed that the points must have
-/// been made to collide.
-fn by_table(points: &[[f64; 3]]) -> Option<Vec<u32>> {
+/// Records looked up together. Their first slots are loaded before any of them is used, so that
+/// the memory's answers overlap.
+const BATCH: usize = 64;
+
+/// Welds by an open table, moving the first record of each vertex to the vertex's place.
+///
+/// `Err` where so many probes were needed that the points must have been made to collide; it
+/// holds the map of the records seen until then.
+fn by_table(points: &mut [[f64; 3]]) -> Result<Welded, Welded> {
     // A closed triangle mesh has six records a vertex; half-filled slots make that a third.
     let mut table = Table::new(points.len() / 3);
-    let mut unique: Vec<[u64; 3]> = Vec::with_capacity(points.len() / 6);
     let mut map = Vec::with_capacity(points.len());
     let mut patience = 64 * points.len() as u64 + 4096;
-    for point in points {
-        let key = bits(point);
-        let tag = (hash(key) >> 32) as u32;
-        let mask = table.slots.len() - 1;
-        let mut place = table.home(tag);
-        let vertex = loop {
-            let slot = table.slots[place];
-            if slot == FREE {
-                let vertex = unique.len() as u32;
-                table.slots[place] = u64::from(tag) << 32 | u64::from(vertex);
-                table.filled += 1;
-                unique.push(key);
-                if table.filled * 2 > table.slots.len() {
+    let mut count = 0;
+    let (mut tags, mut hints) = ([0_u32; BATCH], [FREE; BATCH]);
+    for start in (0..points.len()).step_by(BATCH) {
+        let end = points.len().min(start + BATCH);
+        for (tag, point) in tags.iter_mut().zip(&points[start..end]) {
+            *tag = (hash(bits(point)) >> 32) as u32;
+        }
+        for (hint, &tag) in hints.iter_mut().zip(&tags) {
+            *hint = table.slots[table.home(tag)];
+        }
+        for record in start..end {
+            let point = points[record];
+            let (tag, hint) = (tags[record - start], hints[record - start]);
+            let is_it = |slot: u64| {
+                (slot >> 32) as u32 == tag && slot != FREE && points[slot as u32 as usize] == point
+            };
+            if is_it(hint) {
+                map.push(hint as u32);
+                continue;
+            }
+            let mask = table.slots.len() - 1;
+            let mut place = table.home(tag);
+            let vertex = loop {
+                let slot = table.slots[place];
+                if slot == FREE {
+                    break None;
+                }
+                if is_it(slot) {
+                    break Some(slot as u32);
+                }
+                place = (place + 1) & mask;
+                patience -= 1;
+                if patience == 0 {
+                    return Err(Welded { map, count });
+                }
+            };
+            map.push(vertex.unwrap_or(count as u32));
+            if vertex.is_none() {
+                points[count] = point;
+                table.slots[place] = u64::from(tag) << 32 | count as u64;
+                count += 1;
+                if count * 2 > table.slots.len() {
                     table.double();
                 }
-                break vertex;
             }
-            if (slot >> 32) as u32 == tag && unique[slot as u32 as usize] == key {
-                break slot as u32;
-            }
-            place = (place + 1) & mask;
-            patience -= 1;
-            if patience == 0 {
-                return None;
-            }
-        };
-        map.push(vertex);
+        }
     }
-    Some(map)
+    Ok(Welded { map, count })
 }
 
-/// The same map by sorting the records.
-fn by_sorting(points: &[[f64; 3]]) -> Vec<u32> {
+/// The same by sorting the records.
+fn by_sorting(points: &[[f64; 3]]) -> Welded {
     let mut order: Vec<u32> = (0..points.len() as u32).collect();
     order.sort_unstable_by_key(|&record| (bits(&points[record as usize]), record));
     // First the first record of each run, then the numbers in the order of first records.
     let mut map = vec![0_u32; points.len()];
-    for run in order.chunk_by(|&a, &b| bits(&points[a as usize]) == bits(&points[b as usize])) {
+    for run in order.chunk_by(|&a, &b| points[a as usize] == points[b as usize]) {
         for &record in run {
             map[record as usize] = run[0];
         }
@@ -176,7 +215,7 @@ fn by_sorting(points: &[[f64; 3]]) -> Vec<u32> {
             map[record] = map[first];
         }
     }
-    map
+    Welded { map, count: count as usize }
 }
 
 #[cfg(test)]
@@ -196,7 +235,7 @@ mod tests {
     }
 
     /// By the definition: the first record that compares equal, number for number.
-    fn by_definition(points: &[[f64; 3]]) -> Vec<u32> {
+    fn by_definition(points: &[[f64; 3]]) -> Welded {
         let mut unique: Vec<[f64; 3]> = Vec::new();
         let vertex = |point: &[f64; 3]| match unique.iter().position(|seen| seen == point) {
             Some(found) => found as u32,
@@ -205,16 +244,27 @@ mod tests {
                 unique.len() as u32 - 1
             }
         };
-        points.iter().map(vertex).collect()
+        let map = points.iter().map(vertex).collect();
+        Welded { map, count: unique.len() }
     }
 
     #[test]
     fn table_and_sorting_agree_with_the_definition() {
-        for count in [0, 1, 2, 100, 5000] {
-            let points = grid_points(count);
+        for count in [0, 1, 2, 64, 100, 5000] {
+            let mut points = grid_points(count);
+            if count > 2 {
+                points[7] = [f64::NAN; 3];
+                points[1] = [f64::NAN; 3];
+            }
             let expected = by_definition(&points);
-            assert_eq!(by_table(&points).as_ref(), Some(&expected));
             assert_eq!(by_sorting(&points), expected);
+            let records = points.clone();
+            assert_eq!(weld(&mut points), expected.map);
+            assert_eq!(points.len(), expected.count);
+            // Each vertex is its first record, bit for bit.
+            let firsts = firsts(&expected.map).into_iter().map(|f| records[f as usize]);
+            let bits = |p: [f64; 3]| p.map(f64::to_bits);
+            assert!(points.iter().copied().map(bits).eq(firsts.map(bits)));
         }
     }
 
@@ -248,9 +298,10 @@ mod tests {
         let x = f64::from_bits(0x243f_6a88_85a3_08d3);
         let mut points: Vec<_> = (0..3000).map(|i| [x, f64::from(i), 0.0]).collect();
         points.extend_from_within(..);
-        assert!(by_table(&points).is_none());
+        let records = points.clone();
+        assert!(by_table(&mut points.clone()).is_err());
         let map = weld(&mut points);
-        assert_eq!(points.len(), 3000);
+        assert_eq!(points, records[..3000]);
         assert_eq!(map[3000..], map[..3000]);
     }
 
