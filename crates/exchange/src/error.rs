@@ -10,7 +10,7 @@ use std::fmt;
 /// let text = b"solid s\nfacet normal 0 0 1\nouter loop\nvertex 0 0 nan\n";
 /// let error = read_bytes(text, None, "plate.stl").unwrap_err();
 /// assert_eq!(error.place(), Place::Line(4));
-/// assert!(error.to_string().starts_with("plate.stl, line 4: coordinate z is nan;"));
+/// assert!(error.to_string().starts_with("plate.stl, line 4: coordinate z is nan, "));
 /// ```
 #[derive(Debug, thiserror::Error)]
 #[error("{file}{place}: {problem}")]

@@ -87,7 +87,8 @@ pub fn detect(bytes: &[u8], path: &Path) -> Result<Format, ReadProblem> {
     if text.trim_ascii().is_empty() {
         return Err(ReadProblem::Empty);
     }
-    if starts_with_word(text, b"ply") {
+    let first_line = text.split(|&byte| byte == b'\n' || byte == b'\r').next().unwrap_or(text);
+    if first_line.trim_ascii().eq_ignore_ascii_case(b"ply") {
         return Ok(Format::Ply);
     }
     if has_binary_stl_size(bytes) || is_stl_text(bytes) {

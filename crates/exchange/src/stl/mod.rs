@@ -37,3 +37,6 @@ fn check_record_count(records: usize) -> Result<(), Fault> {
     }
     Ok(())
 }
+
+#[cfg(test)]
+mod tests;
