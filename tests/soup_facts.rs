@@ -5,7 +5,7 @@
 //! more files and a `facts.json` of their own.
 #![forbid(unsafe_code)]
 
-use merestone_exchange::{MeshFile, ReadError, read_path};
+use merestone_exchange::{MeshFile, ReadError, Records, read_path};
 use merestone_geometry::{NoteKind, PLANAR_TOLERANCE};
 use serde_json::Value;
 use std::collections::BTreeMap;
@@ -16,15 +16,18 @@ fn data() -> PathBuf {
 }
 
 fn read(name: &str) -> Result<MeshFile, ReadError> {
-    read_path(data().join(name), None)
+    read_path(data().join(name), None, Records::AsFiled)
 }
 
 /// The counts that `facts.json` has, too, under its names; `Err` is the reader's message.
 fn counts(path: &Path) -> Result<BTreeMap<&'static str, usize>, String> {
-    let soup = read_path(path, None).map_err(|error| error.to_string())?.soup;
+    let soup = read_path(path, None, Records::AsFiled).map_err(|error| error.to_string())?.soup;
     let in_file = soup.points.len();
     let (soup, record_to_vertex) = soup.weld_exact();
     assert_eq!(record_to_vertex.len(), in_file);
+    // Welded on the way in, the file is the same.
+    let welded = read_path(path, None, Records::Welded).map_err(|error| error.to_string())?.soup;
+    assert!(welded == soup, "{}", path.display());
     let welded = soup.points.len();
     let clean = soup.clean().map_err(|error| error.to_string())?;
     assert_eq!(clean.isolated_vertices(), welded - clean.points().len());
@@ -147,7 +150,8 @@ fn names_of_solids_are_kept() {
 #[test]
 fn a_wrong_ending_does_not_matter() {
     let bytes = std::fs::read(data().join("jacksboro_terrain.ply")).expect("a file");
-    let soup =
-        merestone_exchange::read_bytes(&bytes, None, "terrain.stl").expect("a PLY file").soup;
+    let soup = merestone_exchange::read_bytes(&bytes, None, Records::AsFiled, "terrain.stl")
+        .expect("a PLY file")
+        .soup;
     assert_eq!(soup.faces.as_list().face_count(), 68742);
 }

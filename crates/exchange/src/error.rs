@@ -6,9 +6,9 @@ use std::fmt;
 /// A file that could not be read: which, where in it, why, and what to do.
 ///
 /// ```
-/// use merestone_exchange::{Place, read_bytes};
+/// use merestone_exchange::{Place, Records, read_bytes};
 /// let text = b"solid s\nfacet normal 0 0 1\nouter loop\nvertex 0 0 nan\n";
-/// let error = read_bytes(text, None, "plate.stl").unwrap_err();
+/// let error = read_bytes(text, None, Records::AsFiled, "plate.stl").unwrap_err();
 /// assert_eq!(error.place(), Place::Line(4));
 /// assert!(error.to_string().starts_with("plate.stl, line 4: coordinate z is nan, "));
 /// ```

@@ -5,5 +5,5 @@ mod soup;
 
 pub use soup::{
     AttributeColumn, AttributeValues, CleanSoup, CollapsedLoop, DuplicateFace, Note, NoteKind,
-    PLANAR_TOLERANCE, PolygonSoup, SoupError,
+    PLANAR_TOLERANCE, PolygonSoup, SoupError, Welder,
 };

@@ -1,4 +1,4 @@
-use crate::{Encoding, MeshFile, Place, ReadError, read_bytes};
+use crate::{Encoding, MeshFile, Place, ReadError, Records, read_bytes};
 use merestone_geometry::{AttributeColumn, AttributeValues, NoteKind};
 
 const XYZ: &str = "property float x\nproperty float y\nproperty float z\n";
@@ -34,11 +34,11 @@ fn binary(little: bool) -> Vec<u8> {
 }
 
 fn read(bytes: &[u8]) -> MeshFile {
-    read_bytes(bytes, None, "t.ply").unwrap()
+    read_bytes(bytes, None, Records::AsFiled, "t.ply").unwrap()
 }
 
 fn refused(bytes: &[u8]) -> ReadError {
-    read_bytes(bytes, None, "t.ply").unwrap_err()
+    read_bytes(bytes, None, Records::AsFiled, "t.ply").unwrap_err()
 }
 
 fn loops(file: &MeshFile) -> Vec<Vec<u32>> {
@@ -249,7 +249,7 @@ fn every_truncation_is_refused_with_a_place() {
         // The text's last line may lack its end; a digit less is another index.
         let shortest = whole.len() - if whole.ends_with(b"\n") { 2 } else { 0 };
         for length in 0..shortest {
-            let error = read_bytes(&whole[..length], None, "t.ply").unwrap_err();
+            let error = read_bytes(&whole[..length], None, Records::AsFiled, "t.ply").unwrap_err();
             assert!(length == 0 || length < 3 || error.place() != Place::File, "{length}: {error}");
         }
     }

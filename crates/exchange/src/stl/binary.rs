@@ -3,13 +3,15 @@
 use super::normals::NormalTally;
 use super::{announced_facets, check_record_count};
 use crate::error::{Fault, ReadProblem};
-use merestone_geometry::{AttributeColumn, AttributeValues, Note, NoteKind, PolygonSoup};
+use merestone_geometry::{AttributeColumn, AttributeValues, Note, NoteKind, PolygonSoup, Welder};
 use merestone_topology::FaceListBuf;
 
 const HEADER: usize = 84;
 const FACET: usize = 50;
 
-pub(super) fn read(bytes: &[u8]) -> Result<PolygonSoup, Fault> {
+/// Reads all records, or their vertices only: then three corners a facet name them, and the
+/// records, six times as many on a closed mesh, are never held.
+pub(super) fn read(bytes: &[u8], weld: bool) -> Result<PolygonSoup, Fault> {
     let truncated = |inside: &str| {
         Fault::byte(bytes.len(), ReadProblem::Truncated { inside: inside.to_owned() })
     };
@@ -27,21 +29,37 @@ pub(super) fn read(bytes: &[u8]) -> Result<PolygonSoup, Fault> {
     check_record_count(3 * facets)?;
     let body = &body[..facets * FACET];
 
-    let mut points = Vec::with_capacity(3 * facets);
+    let mut sink = if weld {
+        let welder = Welder::with_capacity(3 * facets);
+        Sink::Vertices { welder, corners: Vec::with_capacity(3 * facets) }
+    } else {
+        Sink::Records(Vec::with_capacity(3 * facets))
+    };
     let mut normals = NormalTally::default();
     let mut any_attribute = 0;
-    for (index, facet) in body.as_chunks::<FACET>().0.iter().enumerate() {
-        let [normal, a, b, c] = [0, 12, 24, 36].map(|at| vector(facet, at));
-        let corners = [a, b, c];
-        if !corners.as_flattened().iter().fold(true, |all, x| all & x.is_finite()) {
-            return Err(not_finite(index, &corners));
+    let mut batch = [[[0.0; 3]; 3]; BATCH];
+    for (turn, chunk) in body.as_chunks::<FACET>().0.chunks(BATCH).enumerate() {
+        for (place, facet) in chunk.iter().enumerate() {
+            let index = turn * BATCH + place;
+            let [normal, a, b, c] = [0, 12, 24, 36].map(|at| vector(facet, at));
+            let corners = [a, b, c];
+            // Without a branch for each: they are all finite but for one file in thousands.
+            if !corners.as_flattened().iter().fold(true, |all, x| all & x.is_finite()) {
+                return Err(not_finite(index, &corners));
+            }
+            normals.compare(index, normal, corners);
+            any_attribute |= u16::from_le_bytes([facet[48], facet[49]]);
+            batch[place] = corners;
         }
-        normals.compare(index, normal, corners);
-        any_attribute |= u16::from_le_bytes([facet[48], facet[49]]);
-        points.extend(corners);
+        sink.take(batch[..chunk.len()].as_flattened());
     }
 
-    let mut soup = PolygonSoup { faces: triangles(facets)?, points, ..PolygonSoup::default() };
+    let (points, corners) = sink.finish();
+    let mut soup = PolygonSoup {
+        faces: triangles(points.len(), corners, facets)?,
+        points,
+        ..PolygonSoup::default()
+    };
     if any_attribute != 0 {
         let values = body.as_chunks::<FACET>().0.iter();
         let values = values.map(|facet| u16::from_le_bytes([facet[48], facet[49]])).collect();
@@ -74,11 +92,39 @@ pub(super) fn read(bytes: &[u8]) -> Result<PolygonSoup, Fault> {
     Ok(soup)
 }
 
-/// Faces of three corners each, numbered through.
-fn triangles(facets: usize) -> Result<FaceListBuf, Fault> {
-    let corners = (0..3 * facets as u32).collect();
+/// Facets decoded before their corners are handed on together.
+const BATCH: usize = 21;
+
+/// Where corners go.
+enum Sink {
+    Records(Vec<[f64; 3]>),
+    Vertices { welder: Welder, corners: Vec<u32> },
+}
+
+impl Sink {
+    #[inline]
+    fn take(&mut self, records: &[[f64; 3]]) {
+        match self {
+            Self::Records(points) => points.extend_from_slice(records),
+            Self::Vertices { welder, corners } => welder.add(records, corners),
+        }
+    }
+
+    /// The points and the corners that name them.
+    fn finish(self) -> (Vec<[f64; 3]>, Vec<u32>) {
+        match self {
+            Self::Records(points) => {
+                let corners = (0..points.len() as u32).collect();
+                (points, corners)
+            }
+            Self::Vertices { welder, corners } => (welder.into_points(), corners),
+        }
+    }
+}
+
+fn triangles(vertices: usize, corners: Vec<u32>, facets: usize) -> Result<FaceListBuf, Fault> {
     let ends = (1..=facets as u32).map(|facet| 3 * facet).collect();
-    FaceListBuf::from_polygons(3 * facets, corners, ends).map_err(|error| Fault::file(error.into()))
+    FaceListBuf::from_polygons(vertices, corners, ends).map_err(|error| Fault::file(error.into()))
 }
 
 #[inline(always)]

@@ -13,14 +13,16 @@ use crate::error::{Fault, ReadProblem};
 use crate::format::{Encoding, has_binary_stl_size, is_stl_text};
 use merestone_geometry::PolygonSoup;
 
-pub(crate) fn read(bytes: &[u8]) -> Result<(Encoding, PolygonSoup), Fault> {
+/// With `weld`, records with equal coordinates are one point each.
+pub(crate) fn read(bytes: &[u8], weld: bool) -> Result<(Encoding, PolygonSoup), Fault> {
     if bytes.trim_ascii().is_empty() {
         return Err(Fault::file(ReadProblem::Empty));
     }
     if !has_binary_stl_size(bytes) && is_stl_text(bytes) {
-        return Ok((Encoding::Text, text::read(bytes)?));
+        let soup = text::read(bytes)?;
+        return Ok((Encoding::Text, if weld { soup.weld_exact().0 } else { soup }));
     }
-    Ok((Encoding::LittleEndian, binary::read(bytes)?))
+    Ok((Encoding::LittleEndian, binary::read(bytes, weld)?))
 }
 
 /// The facet count in a binary file's place, if there are so many bytes.

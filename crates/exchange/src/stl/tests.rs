@@ -1,12 +1,12 @@
-use crate::{Encoding, MeshFile, Place, ReadError, read_bytes};
+use crate::{Encoding, MeshFile, Place, ReadError, Records, read_bytes};
 use merestone_geometry::{AttributeValues, NoteKind};
 
 fn read(bytes: &[u8]) -> MeshFile {
-    read_bytes(bytes, None, "t.stl").unwrap()
+    read_bytes(bytes, None, Records::AsFiled, "t.stl").unwrap()
 }
 
 fn refused(bytes: &[u8]) -> ReadError {
-    read_bytes(bytes, None, "t.stl").unwrap_err()
+    read_bytes(bytes, None, Records::AsFiled, "t.stl").unwrap_err()
 }
 
 #[track_caller]
@@ -159,7 +159,7 @@ fn text_errors_name_their_line() {
 fn every_truncation_of_text_is_refused_or_noted() {
     let text = format!("solid s\n{FACET}{FACET}endsolid s\n");
     for length in 0..text.len() {
-        match read_bytes(&text.as_bytes()[..length], None, "t.stl") {
+        match read_bytes(&text.as_bytes()[..length], None, Records::AsFiled, "t.stl") {
             Err(error) => assert!(length < 7 || error.place() != Place::File, "{length}: {error}"),
             // Cut between facets: what was read is whole. The last two characters are a name.
             Ok(file) => {
@@ -212,5 +212,5 @@ fn binary_files_that_make_no_sense_are_refused_with_the_byte() {
         assert_refused(&bytes, Place::Byte(166), "coordinate z is");
     }
     assert!(refused(b"").to_string().contains("empty"));
-    assert!(read_bytes(b"  ", Some(crate::Format::Stl), "-").is_err());
+    assert!(read_bytes(b"  ", Some(crate::Format::Stl), Records::AsFiled, "-").is_err());
 }

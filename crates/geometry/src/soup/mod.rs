@@ -36,6 +36,7 @@ pub use duplicates::DuplicateFace;
 pub use error::SoupError;
 pub use note::{Note, NoteKind};
 pub use planarity::PLANAR_TOLERANCE;
+pub use weld::Welder;
 
 use merestone_topology::FaceListBuf;
 

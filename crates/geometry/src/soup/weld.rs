@@ -1,6 +1,7 @@
 //! Exact welding: records with equal coordinates become one vertex.
 
 use super::PolygonSoup;
+use std::collections::BTreeMap;
 
 impl PolygonSoup {
     /// Makes one vertex of all records whose three coordinates are equal as numbers.
@@ -48,33 +49,95 @@ fn firsts(vertex_of: &[u32]) -> Vec<u32> {
 
 /// Welds in place: afterwards `points` holds each different point once. Returns the map.
 fn weld(points: &mut Vec<[f64; 3]>) -> Vec<u32> {
-    let Welded { map, count } = by_table(points).unwrap_or_else(|partial| {
-        // Records the table has seen are where their vertices are now.
-        let point = |record: usize| match partial.map.get(record) {
-            Some(&vertex) => points[vertex as usize],
-            None => points[record],
-        };
-        let records: Vec<[f64; 3]> = (0..points.len()).map(point).collect();
-        let welded = by_sorting(&records);
-        let mut count = 0;
-        for (record, &vertex) in welded.map.iter().enumerate() {
-            if vertex as usize == count {
-                points[count] = records[record];
-                count += 1;
-            }
-        }
-        welded
-    });
-    points.truncate(count);
+    let mut map = Vec::with_capacity(points.len());
+    let mut index = Index::with_capacity(points.len());
+    let mut batch = [[0.0; 3]; BATCH];
+    for start in (0..points.len()).step_by(BATCH) {
+        let batch = &mut batch[..BATCH.min(points.len() - start)];
+        batch.copy_from_slice(&points[start..start + batch.len()]);
+        // Vertices never outnumber the records read, so that none is overwritten unread.
+        index.add(&mut Front(points), batch, &mut map);
+    }
+    points.truncate(index.count);
     points.shrink_to_fit();
     map
 }
 
-/// For each record its vertex, and how many vertices there are.
-#[derive(Debug, PartialEq)]
-struct Welded {
-    map: Vec<u32>,
-    count: usize,
+/// Exact welding of records as they come, without holding them.
+///
+/// Gives what [`PolygonSoup::weld_exact`] gives for all records together.
+///
+/// ```
+/// use merestone_geometry::Welder;
+/// let mut welder = Welder::with_capacity(4);
+/// let mut vertices = Vec::new();
+/// welder.add(&[[0., 0., 0.], [1., 0., 0.], [-0., 0., 0.]], &mut vertices);
+/// welder.add(&[[1., 0., 0.]], &mut vertices);
+/// assert_eq!(vertices, [0, 1, 0, 1]);
+/// assert_eq!(welder.into_points(), [[0., 0., 0.], [1., 0., 0.]]);
+/// ```
+#[derive(Clone, Debug)]
+pub struct Welder {
+    points: Vec<[f64; 3]>,
+    index: Index,
+}
+
+impl Welder {
+    /// A welder with room for about so many records of a closed mesh, six to a vertex.
+    #[must_use]
+    pub fn with_capacity(records: usize) -> Self {
+        Self { points: Vec::with_capacity(records / 6), index: Index::with_capacity(records) }
+    }
+
+    /// Appends the vertex of each record to `vertices`. Faster the more records come at once.
+    ///
+    /// Amortised O(records), as [`PolygonSoup::weld_exact`].
+    pub fn add(&mut self, records: &[[f64; 3]], vertices: &mut Vec<u32>) {
+        for batch in records.chunks(BATCH) {
+            self.index.add(&mut self.points, batch, vertices);
+        }
+    }
+
+    /// The vertices, in the order of their first records.
+    #[must_use]
+    pub fn into_points(mut self) -> Vec<[f64; 3]> {
+        self.points.shrink_to_fit();
+        self.points
+    }
+}
+
+/// Where vertices are kept.
+trait Store {
+    fn get(&self, vertex: u32) -> [f64; 3];
+    /// Keeps the vertex of the next number.
+    fn put(&mut self, vertex: usize, point: [f64; 3]);
+}
+
+impl Store for Vec<[f64; 3]> {
+    #[inline(always)]
+    fn get(&self, vertex: u32) -> [f64; 3] {
+        self[vertex as usize]
+    }
+
+    #[inline(always)]
+    fn put(&mut self, _: usize, point: [f64; 3]) {
+        self.push(point);
+    }
+}
+
+/// The front of the records' own array.
+struct Front<'a>(&'a mut [[f64; 3]]);
+
+impl Store for Front<'_> {
+    #[inline(always)]
+    fn get(&self, vertex: u32) -> [f64; 3] {
+        self.0[vertex as usize]
+    }
+
+    #[inline(always)]
+    fn put(&mut self, vertex: usize, point: [f64; 3]) {
+        self.0[vertex] = point;
+    }
 }
 
 /// The coordinates' bits, with one zero.
@@ -102,6 +165,7 @@ const FREE: u64 = u64::MAX;
 
 /// Slots of (hash's upper half, vertex), linear probing. A slot decides most comparisons without
 /// a look at the point, and doubling needs no look at all.
+#[derive(Clone, Debug)]
 struct Table {
     slots: Vec<u64>,
 }
@@ -135,87 +199,93 @@ impl Table {
 /// the memory's answers overlap.
 const BATCH: usize = 64;
 
-/// Welds by an open table, moving the first record of each vertex to the vertex's place.
-///
-/// `Err` where so many probes were needed that the points must have been made to collide; it
-/// holds the map of the records seen until then.
-fn by_table(points: &mut [[f64; 3]]) -> Result<Welded, Welded> {
-    // A closed triangle mesh has six records a vertex; half-filled slots make that a third.
-    let mut table = Table::new(points.len() / 3);
-    let mut map = Vec::with_capacity(points.len());
-    let mut patience = 64 * points.len() as u64 + 4096;
-    let mut count = 0;
-    let (mut tags, mut hints) = ([0_u32; BATCH], [FREE; BATCH]);
-    for start in (0..points.len()).step_by(BATCH) {
-        let end = points.len().min(start + BATCH);
-        for (tag, point) in tags.iter_mut().zip(&points[start..end]) {
-            *tag = (hash(bits(point)) >> 32) as u32;
-        }
-        for (hint, &tag) in hints.iter_mut().zip(&tags) {
-            *hint = table.slots[table.home(tag)];
-        }
-        for record in start..end {
-            let point = points[record];
-            let (tag, hint) = (tags[record - start], hints[record - start]);
-            let is_it = |slot: u64| {
-                (slot >> 32) as u32 == tag && slot != FREE && points[slot as u32 as usize] == point
-            };
-            if is_it(hint) {
-                map.push(hint as u32);
-                continue;
-            }
-            let mask = table.slots.len() - 1;
-            let mut place = table.home(tag);
-            let vertex = loop {
-                let slot = table.slots[place];
-                if slot == FREE {
-                    break None;
-                }
-                if is_it(slot) {
-                    break Some(slot as u32);
-                }
-                place = (place + 1) & mask;
-                patience -= 1;
-                if patience == 0 {
-                    return Err(Welded { map, count });
-                }
-            };
-            map.push(vertex.unwrap_or(count as u32));
-            if vertex.is_none() {
-                points[count] = point;
-                table.slots[place] = u64::from(tag) << 32 | count as u64;
-                count += 1;
-                if count * 2 > table.slots.len() {
-                    table.double();
-                }
-            }
-        }
-    }
-    Ok(Welded { map, count })
+/// Probes allowed for each record on average. Chance needs about one.
+const PATIENCE: u64 = 64;
+
+/// Which vertex has which point.
+#[derive(Clone, Debug)]
+struct Index {
+    table: Table,
+    /// Takes over once so many probes were needed that the points must have been made to collide.
+    tree: Option<BTreeMap<[u64; 3], u32>>,
+    patience: u64,
+    count: usize,
 }
 
-/// The same by sorting the records.
-fn by_sorting(points: &[[f64; 3]]) -> Welded {
-    let mut order: Vec<u32> = (0..points.len() as u32).collect();
-    order.sort_unstable_by_key(|&record| (bits(&points[record as usize]), record));
-    // First the first record of each run, then the numbers in the order of first records.
-    let mut map = vec![0_u32; points.len()];
-    for run in order.chunk_by(|&a, &b| points[a as usize] == points[b as usize]) {
-        for &record in run {
-            map[record as usize] = run[0];
+impl Index {
+    fn with_capacity(records: usize) -> Self {
+        // A closed triangle mesh has six records a vertex; half-filled slots make that a third.
+        Self { table: Table::new(records / 3), tree: None, patience: 4096, count: 0 }
+    }
+
+    /// Appends the vertices of up to [`BATCH`] records to the map.
+    #[inline]
+    fn add(&mut self, store: &mut impl Store, batch: &[[f64; 3]], map: &mut Vec<u32>) {
+        self.patience += PATIENCE * batch.len() as u64;
+        let (mut tags, mut hints) = ([0_u32; BATCH], [FREE; BATCH]);
+        for (tag, point) in tags.iter_mut().zip(batch) {
+            *tag = (hash(bits(point)) >> 32) as u32;
+        }
+        for (hint, &tag) in hints.iter_mut().zip(&tags[..batch.len().min(BATCH)]) {
+            *hint = self.table.slots[self.table.home(tag)];
+        }
+        for ((&point, &tag), &hint) in batch.iter().zip(&tags).zip(&hints) {
+            // Filled slots never change, so what was loaded is still true.
+            let vertex =
+                if hint != FREE && (hint >> 32) as u32 == tag && store.get(hint as u32) == point {
+                    hint as u32
+                } else {
+                    self.look_up(store, point, tag)
+                };
+            map.push(vertex);
         }
     }
-    let mut count = 0;
-    for record in 0..map.len() {
-        let first = map[record] as usize;
-        if first == record {
-            map[record] = count;
-            count += 1;
-        } else {
-            map[record] = map[first];
+
+    /// The vertex of this point, a new one if need be.
+    fn look_up(&mut self, store: &mut impl Store, point: [f64; 3], tag: u32) -> u32 {
+        if self.tree.is_none() {
+            let mask = self.table.slots.len() - 1;
+            let mut place = self.table.home(tag);
+            while self.patience > 0 {
+                let slot = self.table.slots[place];
+                if slot == FREE {
+                    let vertex = self.new_vertex(store, point);
+                    self.table.slots[place] = u64::from(tag) << 32 | u64::from(vertex);
+                    if self.count * 2 > self.table.slots.len() {
+                        self.table.double();
+                    }
+                    return vertex;
+                }
+                if (slot >> 32) as u32 == tag && store.get(slot as u32) == point {
+                    return slot as u32;
+                }
+                place = (place + 1) & mask;
+                self.patience -= 1;
+            }
         }
+        self.look_up_in_tree(store, point)
     }
-    Welded { map, count: count as usize }
+
+    #[cold]
+    fn look_up_in_tree(&mut self, store: &mut impl Store, point: [f64; 3]) -> u32 {
+        let count = self.count as u32;
+        let tree =
+            self.tree.get_or_insert_with(|| (0..count).map(|v| (bits(&store.get(v)), v)).collect());
+        let is_number = point.iter().all(|x| !x.is_nan());
+        if let Some(&vertex) = tree.get(&bits(&point)).filter(|_| is_number) {
+            return vertex;
+        }
+        tree.insert(bits(&point), count);
+        self.new_vertex(store, point)
+    }
+
+    #[inline(always)]
+    fn new_vertex(&mut self, store: &mut impl Store, point: [f64; 3]) -> u32 {
+        let vertex = self.count;
+        store.put(vertex, point);
+        self.count += 1;
+        vertex as u32
+    }
 }
 
 #[cfg(test)]
@@ -235,7 +305,7 @@ mod tests {
     }
 
     /// By the definition: the first record that compares equal, number for number.
-    fn by_definition(points: &[[f64; 3]]) -> Welded {
+    fn by_definition(points: &[[f64; 3]]) -> (Vec<u32>, usize) {
         let mut unique: Vec<[f64; 3]> = Vec::new();
         let vertex = |point: &[f64; 3]| match unique.iter().position(|seen| seen == point) {
             Some(found) => found as u32,
@@ -245,24 +315,36 @@ mod tests {
             }
         };
         let map = points.iter().map(vertex).collect();
-        Welded { map, count: unique.len() }
+        (map, unique.len())
     }
 
     #[test]
-    fn table_and_sorting_agree_with_the_definition() {
+    fn all_ways_agree_with_the_definition() {
         for count in [0, 1, 2, 64, 100, 5000] {
             let mut points = grid_points(count);
             if count > 2 {
                 points[7] = [f64::NAN; 3];
                 points[1] = [f64::NAN; 3];
             }
-            let expected = by_definition(&points);
-            assert_eq!(by_sorting(&points), expected);
+            let (expected, vertices) = by_definition(&points);
             let records = points.clone();
-            assert_eq!(weld(&mut points), expected.map);
-            assert_eq!(points.len(), expected.count);
+            assert_eq!(weld(&mut points), expected);
+            assert_eq!(points.len(), vertices);
+            // As they come, a few at a time, and by the tree from the 70th record on.
+            let mut welder = Welder::with_capacity(0);
+            let mut map = Vec::new();
+            for (turn, some) in records.chunks(7).enumerate() {
+                if turn == 10 {
+                    welder.index.look_up_in_tree(&mut welder.points, [99.0; 3]);
+                    welder.points.pop();
+                    welder.index.count -= 1;
+                }
+                welder.add(some, &mut map);
+            }
+            assert_eq!(map, expected);
+            assert_eq!(welder.into_points().len(), vertices);
             // Each vertex is its first record, bit for bit.
-            let firsts = firsts(&expected.map).into_iter().map(|f| records[f as usize]);
+            let firsts = firsts(&expected).into_iter().map(|f| records[f as usize]);
             let bits = |p: [f64; 3]| p.map(f64::to_bits);
             assert!(points.iter().copied().map(bits).eq(firsts.map(bits)));
         }
@@ -293,13 +375,15 @@ mod tests {
     }
 
     #[test]
-    fn points_made_to_collide_are_welded_by_sorting() {
+    fn points_made_to_collide_are_welded_by_the_tree() {
         // x equal to the first constant makes the first product zero whatever y is.
         let x = f64::from_bits(0x243f_6a88_85a3_08d3);
         let mut points: Vec<_> = (0..3000).map(|i| [x, f64::from(i), 0.0]).collect();
         points.extend_from_within(..);
         let records = points.clone();
-        assert!(by_table(&mut points.clone()).is_err());
+        let mut welder = Welder::with_capacity(points.len());
+        welder.add(&points, &mut Vec::new());
+        assert!(welder.index.tree.is_some());
         let map = weld(&mut points);
         assert_eq!(points, records[..3000]);
         assert_eq!(map[3000..], map[..3000]);
