@@ -1,6 +1,6 @@
 //! Mesh files in and out: one file a format, by content first, then by ending.
 //!
-//! Readers hand out a [`PolygonSoup`](merestone_geometry::PolygonSoup): points, loops and columns
+//! Readers hand out a [`PolygonSoup`]: points, loops and columns
 //! as the file has them. Whatever the file says of its own length, memory stays in proportion to
 //! the bytes it really has; whatever is irregular but readable becomes a
 //! [`Note`](merestone_geometry::Note), and nothing is dropped without one.
