@@ -4,22 +4,6 @@
 //! records that coincide, [`PolygonSoup::clean`] applies the counting rules and hands back a
 //! [`CleanSoup`]: finite points, corners in range, loops of at least three different vertices,
 //! no vertex without a face. That is what a topology is assembled from.
-//!
-//! ```
-//! use merestone_geometry::PolygonSoup;
-//! // Two triangles as an unindexed file stores them: each brings its own three points.
-//! let corners = [[0., 0., 0.], [1., 0., 0.], [0., 1., 0.], [1., 0., 0.], [1., 1., 0.], [-0., 1., 0.]];
-//! let mut soup = PolygonSoup { points: corners.to_vec(), ..PolygonSoup::default() };
-//! soup.faces.set_vertex_count(6);
-//! soup.faces.push_face(&[0, 1, 2]);
-//! soup.faces.push_face(&[3, 4, 5]);
-//!
-//! let (soup, record_to_vertex) = soup.weld_exact();
-//! assert_eq!(record_to_vertex, [0, 1, 2, 1, 3, 2]);
-//! let clean = soup.clean()?;
-//! assert_eq!((clean.points().len(), clean.faces().face_count()), (4, 2));
-//! # Ok::<(), merestone_geometry::SoupError>(())
-//! ```
 
 mod clean;
 mod columns;
@@ -41,6 +25,25 @@ pub use weld::Welder;
 use merestone_topology::FaceListBuf;
 
 /// Points and loops as a file has them, with the columns that came along.
+///
+/// Readers hand it out, [`weld_exact`](Self::weld_exact) makes one vertex of records that coincide,
+/// and [`clean`](Self::clean) hands back what a topology is assembled from.
+///
+/// ```
+/// use merestone_geometry::PolygonSoup;
+/// // Two triangles as an unindexed file stores them: each brings its own three points.
+/// let corners = [[0., 0., 0.], [1., 0., 0.], [0., 1., 0.], [1., 0., 0.], [1., 1., 0.], [-0., 1., 0.]];
+/// let mut soup = PolygonSoup { points: corners.to_vec(), ..PolygonSoup::default() };
+/// soup.faces.set_vertex_count(6);
+/// soup.faces.push_face(&[0, 1, 2]);
+/// soup.faces.push_face(&[3, 4, 5]);
+///
+/// let (soup, record_to_vertex) = soup.weld_exact();
+/// assert_eq!(record_to_vertex, [0, 1, 2, 1, 3, 2]);
+/// let clean = soup.clean()?;
+/// assert_eq!((clean.points().len(), clean.faces().face_count()), (4, 2));
+/// # Ok::<(), merestone_geometry::SoupError>(())
+/// ```
 ///
 /// The parts are public because a reader fills them and a caller may: nothing is promised about
 /// them until [`clean`](Self::clean) has passed.

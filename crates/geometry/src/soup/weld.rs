@@ -12,7 +12,16 @@ impl PolygonSoup {
     /// A NaN is equal to nothing; [`clean`](Self::clean) refuses it afterwards.
     ///
     /// O(records) for files as they occur, O(records · log records) for one made to defeat the
-    /// hash. See [the module](self) for an example.
+    /// hash.
+    ///
+    /// ```
+    /// use merestone_geometry::PolygonSoup;
+    /// let points = vec![[0., 1., 0.], [1., 1., 0.], [-0., 1., 0.]];
+    /// let soup = PolygonSoup { points, ..PolygonSoup::default() };
+    /// let (soup, record_to_vertex) = soup.weld_exact();
+    /// assert_eq!(record_to_vertex, [0, 1, 0]);
+    /// assert_eq!(soup.points, [[0., 1., 0.], [1., 1., 0.]]);
+    /// ```
     #[must_use]
     pub fn weld_exact(mut self) -> (Self, Vec<u32>) {
         let vertex_of = weld(&mut self.points);
