@@ -1,9 +1,16 @@
-//! Coordinates on a merestone topology.
+//! Coordinates on a topology: embedding, normals, measuring, and polygon soup.
 #![forbid(unsafe_code)]
 
+mod brep;
+mod measures;
+mod scalar;
 mod soup;
+mod sums;
 
+pub use brep::{Brep, BuildError, NotATriangle, Polygons, TriangleMesh, Triangles};
+pub use scalar::Scalar;
 pub use soup::{
     AttributeColumn, AttributeValues, CleanSoup, CollapsedLoop, DuplicateFace, Note, NoteKind,
     PLANAR_TOLERANCE, PolygonSoup, SoupError, Welder,
 };
+pub use sums::Sum;

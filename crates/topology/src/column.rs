@@ -73,13 +73,13 @@ impl<I: Id, T> Column<I, T> {
     }
 
     /// The column after a compaction or conversion: the values of the cells that live on, each at
-    /// its new place. O(slots).
+    /// its new place, and `value` for cells that came from none. O(slots).
     #[must_use]
-    pub fn follow<J: Id>(self, moved: &Correspondence<I, J>) -> Column<J, T>
+    pub fn follow<J: Id>(self, moved: &Correspondence<I, J>, value: T) -> Column<J, T>
     where
-        T: Default + Clone,
+        T: Clone,
     {
-        let mut values = vec![T::default(); moved.new_bound()];
+        let mut values = vec![value; moved.new_bound()];
         for (value, new) in self.values.into_iter().zip(moved.targets()) {
             if let Some(place) = new.and_then(|new| values.get_mut(new.index())) {
                 *place = value;
@@ -133,7 +133,7 @@ impl<I, T: Debug> Debug for Column<I, T> {
 /// let moved = Correspondence::new(vec![None, Some(v(0)), Some(v(1))], 2);
 /// assert_eq!((moved.get(v(0)), moved.get(v(2))), (None, Some(v(1))));
 /// let column: Column<VertexId, char> = Column::from_values(vec!['a', 'b', 'c']);
-/// assert_eq!(column.follow(&moved).values(), ['b', 'c']);
+/// assert_eq!(column.follow(&moved, '-').values(), ['b', 'c']);
 /// ```
 pub struct Correspondence<A, B> {
     targets: Vec<Option<B>>,

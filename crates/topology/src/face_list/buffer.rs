@@ -19,6 +19,8 @@ pub struct FaceListBuf {
     /// `None` while every face is one edge loop.
     face_ends: Option<Vec<u32>>,
     vertex_loops: Vec<u32>,
+    /// How many loops have another number of corners than three.
+    not_triangles: usize,
     edges: Option<Vec<EdgeUse>>,
 }
 
@@ -50,7 +52,10 @@ impl FaceListBuf {
         ends: Vec<u32>,
     ) -> Result<Self, FaceListError> {
         error::check_ends("loop", &ends, corners.len())?;
-        Ok(Self { vertex_count, corners, loop_ends: ends, ..Self::default() })
+        let mut start = 0;
+        let lengths = ends.iter().map(|&end| end - std::mem::replace(&mut start, end));
+        let not_triangles = lengths.filter(|&length| length != 3).count();
+        Ok(Self { vertex_count, corners, loop_ends: ends, not_triangles, ..Self::default() })
     }
 
     /// How many vertices there are.
@@ -139,6 +144,7 @@ impl FaceListBuf {
     pub fn as_list(&self) -> FaceList<'_> {
         let loop_ends = &self.loop_ends[..];
         let shape = match &self.face_ends {
+            None if self.not_triangles == 0 => Shape::Triangles,
             None => Shape::Polygons { loop_ends },
             Some(face_ends) => {
                 Shape::Loops { loop_ends, face_ends, vertex_loops: &self.vertex_loops }
@@ -164,6 +170,7 @@ impl FaceListBuf {
     }
 
     fn push_loop(&mut self, corners: &[u32]) {
+        self.not_triangles += usize::from(corners.len() != 3);
         self.corners.extend_from_slice(corners);
         self.loop_ends.push(self.corners.len() as u32);
     }
@@ -205,6 +212,7 @@ mod tests {
         buf.push_face(&[0, 1, 2]);
         buf.push_face(&[0, 2, 3]);
         assert_eq!(buf.as_list().loops(1).next().unwrap().corners, [0, 2, 3]);
+        assert_eq!(buf.as_list().as_triangles().unwrap(), [[0, 1, 2], [0, 2, 3]]);
         assert_eq!(buf, FaceListBuf::from_polygons(4, vec![0, 1, 2, 0, 2, 3], vec![3, 6]).unwrap());
     }
 

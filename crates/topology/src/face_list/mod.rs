@@ -158,7 +158,9 @@ impl<'a> FaceList<'a> {
         self.edges
     }
 
-    /// The corners in threes, where every face is one loop of three corners by construction.
+    /// The corners in threes, where every face is one loop of three corners: always so for
+    /// [`triangles`](Self::triangles) and from a [`FaceListBuf`], never for
+    /// [`polygons`](Self::polygons), which does not look.
     #[must_use]
     pub fn as_triangles(&self) -> Option<&'a [[u32; 3]]> {
         match self.shape {

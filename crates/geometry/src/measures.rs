@@ -1,0 +1,112 @@
+//! Normals, area and volume.
+
+use crate::brep::Brep;
+use crate::scalar::Scalar;
+use crate::sums::Sum;
+use merestone_topology::{FaceBound, Topology, TopologyExt};
+use nalgebra::{Point3, Vector3};
+
+impl<K: Topology, S: Scalar> Brep<K, S> {
+    /// The Newell vector of a face: along its normal, as long as twice its area.
+    ///
+    /// For a flat face of any shape, with inner loops or without, this is exact up to rounding;
+    /// for another it is that of the mean plane. Zero where the loops enclose nothing. Source: the
+    /// formula is M. E. Newell's, as in F. Tampieri, *Newell's method for computing the plane
+    /// equation of a polygon*, Graphics Gems III, 1992 (from memory). O(corners).
+    #[inline]
+    #[must_use]
+    pub fn newell_vector(&self, face: K::Face) -> Vector3<f64> {
+        if let Some([a, b, c]) = self.topology().triangle(face) {
+            let [a, b, c] = [c, a, b].map(|h| self.position(self.topology().end(h)));
+            return (b - a).cross(&(c - a));
+        }
+        self.topology().face_bounds(face).fold(Vector3::zeros(), |sum, bound| match bound {
+            FaceBound::EdgeLoop(h) => sum + self.loop_vector(h),
+            FaceBound::VertexLoop(_) => sum,
+        })
+    }
+
+    /// The Newell vector of the loop through `h`.
+    #[inline]
+    fn loop_vector(&self, h: K::OrientedEdge) -> Vector3<f64> {
+        // About a corner of the loop, so that nothing large cancels.
+        let mesh = self.topology();
+        let origin = self.position(mesh.start(h));
+        let step = |(sum, before): (Vector3<f64>, Vector3<f64>), h| {
+            let here: Vector3<f64> = self.position(mesh.start(h)) - origin;
+            (sum + before.cross(&here), here)
+        };
+        mesh.loop_corners(h).fold((Vector3::zeros(), Vector3::zeros()), step).0
+    }
+
+    /// The unit normal of a face, zero where its Newell vector vanishes. O(corners).
+    #[inline]
+    #[must_use]
+    pub fn face_normal(&self, face: K::Face) -> Vector3<f64> {
+        unit(self.newell_vector(face))
+    }
+
+    /// The area of a face: half the length of its Newell vector. O(corners).
+    #[must_use]
+    pub fn face_area(&self, face: K::Face) -> f64 {
+        0.5 * self.newell_vector(face).norm()
+    }
+
+    /// The area of all faces, as a compensated sum. O(corners).
+    #[must_use]
+    pub fn area(&self) -> f64 {
+        let mut sum = Sum::default();
+        self.topology().faces().for_each(|face| sum.add(self.face_area(face)));
+        sum.value()
+    }
+
+    /// The volume that the faces enclose, positive where they face outward, as a compensated sum.
+    ///
+    /// Means something where every edge is balanced
+    /// ([`is_balanced`](merestone_topology::floods::is_balanced)), as on any closed oriented mesh;
+    /// on others it depends on where the mesh lies. The divergence theorem over cones from the
+    /// middle of the bounding box; the loops of a face that is not flat are taken as fans from
+    /// their first corners. O(corners).
+    #[must_use]
+    pub fn signed_volume(&self) -> f64 {
+        let Some([low, high]) = self.bounding_box() else { return 0.0 };
+        let middle = nalgebra::center(&low, &high);
+        let mut sum = Sum::default();
+        self.topology().faces().for_each(|face| sum.add(self.cone(face, middle)));
+        sum.value()
+    }
+
+    /// The signed volume of the cone from `apex` over a face.
+    #[inline]
+    pub(crate) fn cone(&self, face: K::Face, apex: Point3<f64>) -> f64 {
+        let mesh = self.topology();
+        if let Some([a, b, c]) = mesh.triangle(face) {
+            let [a, b, c] = [c, a, b].map(|h| self.position(mesh.end(h)) - apex);
+            return a.dot(&b.cross(&c)) / 6.0;
+        }
+        mesh.face_bounds(face).fold(0.0, |sum, bound| match bound {
+            FaceBound::EdgeLoop(h) => {
+                let first = self.position(mesh.start(h)) - apex;
+                sum + first.dot(&self.loop_vector(h)) / 6.0
+            }
+            FaceBound::VertexLoop(_) => sum,
+        })
+    }
+}
+
+/// `v` at length one, or zero where it is zero.
+#[inline(always)]
+fn unit(v: Vector3<f64>) -> Vector3<f64> {
+    let squared = v.norm_squared();
+    if squared > 0.0 && squared.is_finite() {
+        return v / squared.sqrt();
+    }
+    far_unit(v)
+}
+
+/// The same where the square under- or overflows.
+#[cold]
+fn far_unit(v: Vector3<f64>) -> Vector3<f64> {
+    let largest = v.amax();
+    if largest == 0.0 { v } else { (v / largest).normalize() }
+}
