@@ -3,7 +3,7 @@
 /// Terms added up plainly before their sum is added with care.
 const BLOCK: u32 = 64;
 
-/// A compensated sum: an error of a few last places whatever the number of terms.
+/// A compensated sum: a relative error of some dozen last places, whatever the number of terms.
 ///
 /// Blocks of 64 terms are added up plainly, which is as fast as a plain loop, and the blocks with
 /// Neumaier's compensation (A. Neumaier, *Rundungsfehleranalyse einiger Verfahren zur Summation
@@ -15,7 +15,7 @@ const BLOCK: u32 = 64;
 /// for _ in 0..10_000_000 {
 ///     sum.add(0.1);
 /// }
-/// assert!((sum.value() - 1e6).abs() < 1e-9);
+/// assert!((sum.value() - 1e6).abs() < 1e-8); // a plain loop is off by 1.6e-4
 /// ```
 #[derive(Clone, Copy, Debug, Default)]
 pub struct Sum {
