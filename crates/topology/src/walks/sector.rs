@@ -92,51 +92,45 @@ impl<H: Id> SectorState<H> {
         }
     }
 
-    /// Folds what is left of the sector, each corner as `item` says. Where `turn` has no answer, or
-    /// the tally says that there is more to it, `rest` takes over: a cold function, so that the hot
-    /// stretch here is one load and one test a corner and everything stays in registers.
+    /// Folds the stretch of the sector for which `turn` answers, each corner as `item` says: one
+    /// load and one test a corner. Leaves the walk where it has no answer; `None` at the end of a
+    /// walk of one sector.
     #[inline(always)]
-    pub(super) fn fold_turns<B, T, F: FnMut(B, T) -> B, K>(
+    pub(super) fn fold_turns<B, T, K>(
         mut self,
         mesh: &K,
         mut accumulated: B,
-        mut f: F,
+        f: &mut impl FnMut(B, T) -> B,
         item: impl Fn(H) -> T,
-        rest: impl FnOnce(Self, B, F) -> B,
-    ) -> B
+    ) -> (B, Option<Self>)
     where
         K: Topology<OrientedEdge = H> + ?Sized,
     {
         if self.0.tally.has_flags() {
-            return rest(self, accumulated, f);
+            return (accumulated, Some(self));
         }
         let mut here = self.0.current;
         while let Some(behind) = mesh.turn(here) {
             accumulated = f(accumulated, item(here));
             if behind == self.0.first {
-                return accumulated;
+                return (accumulated, None);
             }
             here = behind;
         }
         self.0.current = here;
-        rest(self, accumulated, f)
+        (accumulated, Some(self))
     }
 }
 
-/// Folds the slow way, step by step.
+/// The next item, marked as rare: in a fold, all that is not the hot stretch stays out of its
+/// registers.
 #[cold]
 #[inline(never)]
-pub(super) fn fold_rest<K: Topology + ?Sized, S: WalkState<K>, B>(
+pub(super) fn advance_rarely<K: Topology + ?Sized, S: WalkState<K>>(
     mesh: &K,
-    mut state: S,
-    init: B,
-    mut f: impl FnMut(B, S::Item) -> B,
-) -> B {
-    let mut accumulated = init;
-    while let Some(item) = state.advance(mesh) {
-        accumulated = f(accumulated, item);
-    }
-    accumulated
+    state: &mut S,
+) -> Option<S::Item> {
+    state.advance(mesh)
 }
 
 impl<K: Topology + ?Sized> WalkState<K> for SectorState<K::OrientedEdge> {
@@ -153,8 +147,14 @@ impl<K: Topology + ?Sized> WalkState<K> for SectorState<K::OrientedEdge> {
     }
 
     #[inline]
-    fn fold<B>(self, mesh: &K, init: B, f: impl FnMut(B, K::OrientedEdge) -> B) -> B {
-        self.fold_turns(mesh, init, f, |h| h, |rest, b, f| fold_rest(mesh, rest, b, f))
+    fn fold<B>(self, mesh: &K, init: B, mut f: impl FnMut(B, K::OrientedEdge) -> B) -> B {
+        let (mut accumulated, rest) = self.fold_turns(mesh, init, &mut f, |h| h);
+        if let Some(mut rest) = rest {
+            while let Some(corner) = advance_rarely(mesh, &mut rest) {
+                accumulated = f(accumulated, corner);
+            }
+        }
+        accumulated
     }
 
     fn lives(&self, mesh: &K) -> bool {

@@ -1,6 +1,6 @@
 //! The sides around a vertex: every edge end of a sector once, with its direction.
 
-use super::sector::fold_rest;
+use super::sector::advance_rarely;
 use super::{SectorState, WalkState};
 use crate::{Id, Topology};
 
@@ -98,11 +98,17 @@ impl<K: Topology + ?Sized> WalkState<K> for SpokesState<K::OrientedEdge> {
     }
 
     #[inline]
-    fn fold<B>(self, mesh: &K, init: B, f: impl FnMut(B, Self::Item) -> B) -> B {
+    fn fold<B>(self, mesh: &K, init: B, mut f: impl FnMut(B, Self::Item) -> B) -> B {
         let Some(sector) = self.0 else { return init };
         let outgoing = |h| Spoke { oriented_edge: h, outgoing: true };
-        let rest = move |rest, b, f| fold_rest(mesh, Self::from_sector(mesh, rest), b, f);
-        sector.fold_turns(mesh, init, f, outgoing, rest)
+        let (mut accumulated, rest) = sector.fold_turns(mesh, init, &mut f, outgoing);
+        if let Some(rest) = rest {
+            let mut rest = Self::from_sector(mesh, rest);
+            while let Some(spoke) = advance_rarely(mesh, &mut rest) {
+                accumulated = f(accumulated, spoke);
+            }
+        }
+        accumulated
     }
 
     fn lives(&self, mesh: &K) -> bool {

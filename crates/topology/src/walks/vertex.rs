@@ -1,6 +1,6 @@
 //! All corners of a vertex, sector by sector.
 
-use super::sector::fold_rest;
+use super::sector::advance_rarely;
 use super::{SectorState, WalkState};
 use crate::{Id, Topology};
 
@@ -41,10 +41,16 @@ impl<K: Topology + ?Sized> WalkState<K> for VertexCornersState<K::OrientedEdge> 
     }
 
     #[inline]
-    fn fold<B>(self, mesh: &K, init: B, f: impl FnMut(B, K::OrientedEdge) -> B) -> B {
+    fn fold<B>(self, mesh: &K, init: B, mut f: impl FnMut(B, Self::Item) -> B) -> B {
         let Some(sector) = self.0 else { return init };
-        let rest = move |rest, b, f| fold_rest(mesh, Self::from_sector(mesh, rest), b, f);
-        sector.fold_turns(mesh, init, f, |h| h, rest)
+        let (mut accumulated, rest) = sector.fold_turns(mesh, init, &mut f, |h| h);
+        if let Some(rest) = rest {
+            let mut rest = Self::from_sector(mesh, rest);
+            while let Some(corner) = advance_rarely(mesh, &mut rest) {
+                accumulated = f(accumulated, corner);
+            }
+        }
+        accumulated
     }
 
     fn lives(&self, mesh: &K) -> bool {
