@@ -190,6 +190,12 @@ impl Topology for TriangleAdjacency {
     }
 
     #[inline(always)]
+    fn across(&self, h: H) -> FaceId {
+        // The turn lies in the same triangle as the radial it follows.
+        FaceId::from_u32((self.turns[self.side(h) as usize] & !LOOSE) / 3)
+    }
+
+    #[inline(always)]
     fn index_buffer(&self) -> Option<&[[u32; 3]]> {
         Some(&self.ends)
     }

@@ -154,6 +154,13 @@ pub trait Topology {
         None
     }
 
+    /// `face(radial(h))`: the face across `h`'s edge, or the next one around it. The default is
+    /// always right; a kernel whose links make it shorter says so.
+    #[inline(always)]
+    fn across(&self, h: Self::OrientedEdge) -> Self::Face {
+        self.face(self.radial(h))
+    }
+
     /// Vertex indices in threes, one three for each face slot, where the kernel keeps them so:
     /// the slice-level way in for vectorised face passes. Retired slots hold anything. A three
     /// begins at any of its face's corners. The default, `None`, is always right.

@@ -2,8 +2,19 @@
 
 use super::UnionFind;
 use crate::{Column, Id, Topology, TopologyExt};
+use smallvec::SmallVec;
+
+/// The label of a face not reached yet.
+const NONE: u32 = u32::MAX;
+
+/// Faces of the front taken at once: enough for their loads to overlap.
+const BLOCK: usize = 32;
 
 /// The components of a mesh: faces joined through shared edges, numbered by their first face.
+///
+/// Two ways lead there, and the order of the faces decides: union-find where faces that meet lie
+/// close in memory, since it streams; breadth first where they do not, since a whole block of
+/// loads is under way at once. The result does not show which.
 ///
 /// ```
 /// # use merestone_topology::{*, floods::Components};
@@ -18,50 +29,28 @@ use crate::{Column, Id, Topology, TopologyExt};
 pub struct Components<F> {
     labels: Column<F, u32>,
     count: usize,
-    sets: UnionFind,
+    front: Vec<F>,
+    near: Vec<F>,
 }
 
 impl<F: Id> Components<F> {
     /// Finds the components. O(uses) as good as.
     #[must_use]
     pub fn of<K: Topology<Face = F>>(mesh: &K) -> Self {
-        let mut found = Self { labels: Column::new(0, 0), count: 0, sets: UnionFind::default() };
+        let mut found =
+            Self { labels: Column::new(0, 0), count: 0, front: Vec::new(), near: Vec::new() };
         found.update(mesh);
         found
     }
 
     /// Finds the components anew, in the memory of the last time.
     pub fn update<K: Topology<Face = F>>(&mut self, mesh: &K) {
-        let sets = &mut self.sets;
-        sets.reset(mesh.face_bound());
-        mesh.faces().for_each(|face| {
-            mesh.face_corners(face).for_each(|h| {
-                // Each use is joined to the one behind it, and every pair is met from above.
-                let across = mesh.face(mesh.radial(h));
-                if across < face {
-                    sets.union(face.index() as u32, across.index() as u32);
-                }
-            });
-        });
-        self.number_sets(mesh);
-    }
-
-    fn number_sets<K: Topology<Face = F>>(&mut self, mesh: &K) {
         let mut labels = std::mem::replace(&mut self.labels, Column::new(0, 0)).into_values();
-        labels.clear();
-        labels.resize(mesh.face_bound(), u32::MAX);
-        let parents = self.sets.parents();
-        let mut count = 0;
-        mesh.faces().for_each(|face| {
-            let parent = parents[face.index()] as usize;
-            if parent == face.index() {
-                labels[parent] = count;
-                count += 1;
-            } else {
-                labels[face.index()] = labels[parent];
-            }
-        });
-        self.count = count as usize;
+        self.count = if is_coherent(mesh) {
+            by_union(mesh, &mut labels)
+        } else {
+            breadth_first(mesh, &mut self.front, &mut self.near, &mut labels)
+        };
         self.labels = Column::from_values(labels);
     }
 
@@ -82,17 +71,124 @@ impl<F: Id> Components<F> {
     #[must_use]
     pub fn count_through_vertices<K: Topology<Face = F>>(mesh: &K) -> usize {
         let mut sets = UnionFind::new(mesh.vertex_bound());
-        let mut without_vertex = 0;
         mesh.faces().for_each(|face| {
-            let mut vertices = mesh.face_vertices(face).map(|v| v.index() as u32);
-            match vertices.next() {
-                Some(first) => vertices.for_each(|v| sets.union(first, v)),
-                None => without_vertex += 1,
+            let mut first = None;
+            mesh.face_vertices(face).for_each(|v| {
+                let number = v.index() as u32;
+                sets.union(*first.get_or_insert(number), number);
+            });
+        });
+        let mut count = 0;
+        mesh.vertices().for_each(|v| {
+            let is_root = sets.parents()[v.index()] as usize == v.index();
+            if is_root && mesh.vertex_faces(v).next().is_some() {
+                count += 1;
             }
         });
-        let used = |v: &K::Vertex| mesh.vertex_faces(*v).next().is_some();
-        let roots =
-            mesh.vertices().filter(used).filter(|v| sets.parents()[v.index()] == v.index() as u32);
-        roots.count() + without_vertex
+        count
     }
+}
+
+/// Whether most of some 256 sampled uses meet a face near their own in the order of faces.
+fn is_coherent<K: Topology>(mesh: &K) -> bool {
+    let bound = mesh.face_bound();
+    let (near, step) = (bound / 16, (bound / 256).max(1));
+    let mut balance = 0;
+    for face in (0..bound).step_by(step).filter_map(|index| mesh.face_at(index)) {
+        for h in mesh.face_corners(face).take(4) {
+            let is_near = mesh.across(h).index().abs_diff(face.index()) <= near;
+            balance += if is_near { 1 } else { -1 };
+        }
+    }
+    // A small mesh lies in the nearest cache whatever its order.
+    balance >= 0 && bound > 1 << 15
+}
+
+fn by_union<K: Topology>(mesh: &K, labels: &mut Vec<u32>) -> usize {
+    let mut sets = UnionFind::within(std::mem::take(labels), mesh.face_bound());
+    let mut all_plain = true;
+    mesh.faces().for_each(|face| {
+        let number = face.index() as u32;
+        // A face above is joined when its turn comes: until then the face stands in for it.
+        let mut below = |h| {
+            all_plain &= mesh.is_plain(h);
+            (mesh.across(h).index() as u32).min(number)
+        };
+        if let Some(corners) = mesh.triangle(face) {
+            sets.join_below(number, &corners.map(below));
+        } else {
+            let faces: SmallVec<[u32; 8]> = mesh.face_corners(face).map(&mut below).collect();
+            sets.join_below(number, &faces);
+        }
+    });
+    if !all_plain {
+        // Around an edge of more than two uses, not every use is met from above.
+        mesh.oriented_edges().for_each(|h| {
+            if !mesh.is_plain(h) {
+                sets.union(mesh.face(h).index() as u32, mesh.across(h).index() as u32);
+            }
+        });
+    }
+    *labels = sets.into_parents();
+    let mut count = 0;
+    mesh.faces().for_each(|face| {
+        // The parent, being below, has its label already.
+        let parent = labels[face.index()] as usize;
+        labels[face.index()] = if parent == face.index() {
+            count += 1;
+            count - 1
+        } else {
+            labels[parent]
+        };
+    });
+    count as usize
+}
+
+fn breadth_first<K: Topology>(
+    mesh: &K,
+    front: &mut Vec<K::Face>,
+    near: &mut Vec<K::Face>,
+    labels: &mut Vec<u32>,
+) -> usize {
+    labels.clear();
+    labels.resize(mesh.face_bound(), NONE);
+    let labels = &mut labels[..];
+    let mut count = 0;
+    mesh.faces().for_each(|seed| {
+        if labels[seed.index()] != NONE {
+            return;
+        }
+        labels[seed.index()] = count;
+        // One place more than faces: what has its label is written there too, and forgotten.
+        front.resize(labels.len() + 1, seed);
+        front[0] = seed;
+        let (mut at, mut end) = (0, 1);
+        while at < end {
+            let block = at..end.min(at + BLOCK);
+            at = block.end;
+            near.clear();
+            for &face in &front[block] {
+                match mesh.triangle(face) {
+                    Some(corners) => near.extend(corners.map(|h| mesh.across(h))),
+                    None => mesh.face_corners(face).for_each(|h| near.push(mesh.across(h))),
+                }
+            }
+            // No label is written here: else each load would wait for the stores before it. And
+            // no branch is guessed, here or below.
+            let mut kept = 0;
+            for i in 0..near.len() {
+                let face = near[i];
+                near[kept] = face;
+                kept += usize::from(labels[face.index()] == NONE);
+            }
+            for &face in &near[..kept] {
+                let label = &mut labels[face.index()];
+                front[end] = face;
+                end += usize::from(*label == NONE);
+                *label = count;
+            }
+        }
+        count += 1;
+    });
+    count as usize
 }

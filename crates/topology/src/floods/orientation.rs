@@ -30,7 +30,7 @@ impl<F: Id, E: Id> Orientation<F, E> {
                         EdgeKind::Misoriented => true,
                         EdgeKind::Boundary | EdgeKind::NonManifold => continue,
                     };
-                    let across = mesh.face(mesh.radial(h));
+                    let across = mesh.across(h);
                     let wanted = turned[face] != flips;
                     if !std::mem::replace(&mut fixed[across], true) {
                         turned[across] = wanted;

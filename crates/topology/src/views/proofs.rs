@@ -65,6 +65,7 @@ macro_rules! topology_through {
                 vertex_loop(v: K::Vertex, i: usize) -> Option<K::Face>;
                 bound(f: K::Face, i: usize) -> Option<FaceBound<K::OrientedEdge, K::Vertex>>;
                 triangle(f: K::Face) -> Option<[K::OrientedEdge; 3]>;
+                across(h: K::OrientedEdge) -> K::Face;
                 index_buffer() -> Option<&[[u32; 3]]>;
                 footprint() -> Footprint;
             }
