@@ -2,6 +2,8 @@
 #![forbid(unsafe_code)]
 
 mod column;
+#[cfg(feature = "conformance")]
+pub mod conformance;
 mod contract;
 mod face_list;
 pub mod floods;
