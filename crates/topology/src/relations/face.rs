@@ -1,7 +1,7 @@
 //! From a face: to vertices, edges and faces.
 
 use super::mapped_walk;
-use crate::walks::{FaceCornersState, LoopState, WalkState};
+use crate::walks::{FaceCornersState, LoopState, Tally, WalkState};
 use crate::{FaceBound, Id, Topology};
 
 mapped_walk!(
@@ -94,13 +94,15 @@ pub struct FaceFacesState<F, H> {
     corners: FaceCornersState<F, H>,
     /// The oriented edge we stand at and the use of its edge that comes next.
     across: Option<(H, H)>,
+    /// Counts the uses of one edge; `corners` counts the rest.
+    tally: Tally,
 }
 
 impl<F: Id, H: Id> FaceFacesState<F, H> {
     /// From a face's outer bound.
     #[inline(always)]
     pub fn new(face: F) -> Self {
-        Self { corners: FaceCornersState::new(face), across: None }
+        Self { corners: FaceCornersState::new(face), across: None, tally: Tally::ZERO }
     }
 }
 
@@ -149,6 +151,14 @@ impl<K: Topology + ?Sized> WalkState<K> for FaceFacesState<K::Face, K::OrientedE
     }
 
     fn spend(&mut self, mesh: &K) -> bool {
+        if self.across.is_some_and(|(h, other)| h != other) {
+            let spent = self.tally.spend(mesh.oriented_edge_bound());
+            if !spent {
+                self.across = None;
+            }
+            return spent;
+        }
+        self.tally = Tally::ZERO;
         WalkState::<K>::spend(&mut self.corners, mesh)
     }
 }

@@ -9,7 +9,7 @@
 //!   when an edit took the ground from under it, and it always ends.
 //!
 #![cfg_attr(feature = "conformance", doc = "```")]
-#![cfg_attr(not(feature = "conformance"), doc = "```ignore")]
+#![cfg_attr(not(feature = "conformance"), doc = "```text")]
 //! # use merestone_topology::{*, conformance::Reference};
 //! let mesh = Reference::assemble(FaceList::triangles(4, &[[0, 1, 2], [0, 2, 3]]))?;
 //! let v = mesh.vertex_at(0).unwrap();
@@ -335,16 +335,19 @@ impl<H: crate::Id> Stand<H> {
 
     pub(crate) fn lives<K: Topology<OrientedEdge = H> + ?Sized>(&self, mesh: &K) -> bool {
         self.tally.done()
-            || [self.first, self.current]
-                .iter()
-                .all(|h| mesh.oriented_edge_at(h.index()) == Some(*h))
+            || [self.first, self.current].into_iter().all(|h| oriented_edge_lives(mesh, h))
     }
 
     pub(crate) fn spend<K: Topology<OrientedEdge = H> + ?Sized>(&mut self, mesh: &K) -> bool {
-        let spent = self.tally.spend(mesh.oriented_edge_bound());
+        let spent = self.tally.done() || self.tally.spend(mesh.oriented_edge_bound());
         if !spent {
             self.tally.set_done(true);
         }
         spent
     }
+}
+
+/// Whether `h` lives.
+pub(crate) fn oriented_edge_lives<K: Topology + ?Sized>(mesh: &K, h: K::OrientedEdge) -> bool {
+    mesh.oriented_edge_at(crate::Id::index(h)) == Some(h)
 }

@@ -1,7 +1,7 @@
 //! The sides around a vertex: every edge end of a sector once, with its direction.
 
 use super::sector::advance_rarely;
-use super::{SectorState, WalkState};
+use super::{SectorState, WalkState, oriented_edge_lives};
 use crate::{Id, Topology};
 
 /// One edge end at a vertex: an oriented edge that starts or ends there.
@@ -112,11 +112,16 @@ impl<K: Topology + ?Sized> WalkState<K> for SpokesState<K::OrientedEdge> {
     }
 
     fn lives(&self, mesh: &K) -> bool {
-        self.0.as_ref().is_none_or(|sector| WalkState::<K>::lives(sector, mesh))
+        // The first corner's entry is yielded last: it must live even when no corner is left.
+        self.0.as_ref().is_none_or(|sector| {
+            oriented_edge_lives(mesh, sector.0.first) && WalkState::<K>::lives(sector, mesh)
+        })
     }
 
     fn spend(&mut self, mesh: &K) -> bool {
-        let spent = self.0.as_mut().is_none_or(|sector| WalkState::<K>::spend(sector, mesh));
+        // Every corner has two sides, and both come where each corner is a sector of its own.
+        let most = 2 * mesh.oriented_edge_bound();
+        let spent = self.0.as_mut().is_none_or(|sector| sector.0.tally.spend(most));
         if !spent {
             self.0 = None;
         }
