@@ -1,5 +1,6 @@
 //! Counts, bounds, whole-mesh iterators and lookups by index.
 
+use super::guard::fold_all;
 use super::pairing::Paired;
 use crate::conformance::Failure;
 use crate::{Id, Topology, TopologyExt};
@@ -125,11 +126,11 @@ fn check_iterator<K: Topology, T: Copy + PartialEq + Debug>(
             let place = format_args!("size_hint after {done}");
             return Err(on.scene.fail(what, place, remaining, (low, high)));
         }
-        let folded = left.clone().fold(Vec::new(), |mut items, item| {
-            items.push(item);
-            items
-        });
-        on.same(what, format_args!("fold after {done} by next"), &expected[done..], &folded[..])?;
+        let place = format_args!("fold after {done} by next");
+        match fold_all(left.clone(), remaining) {
+            Some(folded) => on.same(what, place, &expected[done..], &folded[..])?,
+            None => return Err(on.scene.fail(what, place, expected, "a fold that does not end")),
+        }
         on.same(what, format_args!("count after {done}"), &remaining, &left.clone().count())?;
         on.same(what, format_args!("next number {done}"), &Some(*item), &left.next())?;
     }

@@ -3,6 +3,7 @@
 mod around;
 mod cells;
 mod detached;
+mod guard;
 mod lists;
 mod pairing;
 mod relations;
@@ -22,6 +23,8 @@ pub use walks::check_walks;
 use super::random::Random;
 use super::{Capabilities, Complex, Failure};
 use crate::{Assemble, FaceId, Topology, VertexId};
+use guard::caught;
+use pairing::Scene;
 use stage::Stage;
 
 /// How many cases a kernel held, and how many it refused as beyond it.
@@ -63,8 +66,21 @@ pub fn check_everything<K: Topology>(on: &Paired<'_, K>) -> Result<(), Failure> 
 /// ```
 ///
 /// # Errors
-/// [`Failure`] naming the kernel, the complex, the steps so far and the cells.
+/// [`Failure`] naming the kernel, the complex, the steps so far and the cells; a panic of the
+/// kernel's is one too.
 pub fn check_complex<K: Assemble + 'static>(
+    capabilities: &Capabilities,
+    complex: &Complex,
+    seed: u64,
+) -> Result<bool, Failure> {
+    let scene = Scene::new(capabilities, &complex.name);
+    caught(|| take_through::<K>(capabilities, complex, seed)).unwrap_or_else(|words| {
+        let place = format_args!("seed {seed} of the removals");
+        Err(scene.fail("a step", place, "an answer", format!("a panic: {words}")))
+    })
+}
+
+fn take_through<K: Assemble + 'static>(
     capabilities: &Capabilities,
     complex: &Complex,
     seed: u64,

@@ -1,6 +1,7 @@
 //! Every walk, borrowed and detached, by `next` and by `fold`.
 
 use super::around::{sectors_by_handles, spokes_of};
+use super::guard::fold_all;
 use super::pairing::Paired;
 use crate::conformance::Failure;
 use crate::conformance::definitions::boundary_from;
@@ -42,10 +43,9 @@ where
         // Begun, one step in, before the last item and at the end: where states differ in kind.
         if done < 2 || done + 1 >= expected.len() {
             let gather = |walk: Walk<'_, K, S>| -> Result<Vec<T>, Failure> {
-                let items = walk.fold(Vec::new(), |mut items, item| {
-                    items.push(item);
-                    items
-                });
+                let Some(items) = fold_all(walk, expected.len()) else {
+                    return Err(on.scene.fail(what, at, expected, "a fold that does not end"));
+                };
                 items.into_iter().map(&name).collect()
             };
             let folded: Vec<T> = gather(left.clone())?;
