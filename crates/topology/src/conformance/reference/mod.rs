@@ -2,6 +2,8 @@
 
 mod assembling;
 mod steps;
+#[cfg(test)]
+mod tests;
 
 use super::definitions::{Joints, Sector, sectors_of};
 use crate::{EdgeId, FaceId, OrientedEdgeId, VertexId};

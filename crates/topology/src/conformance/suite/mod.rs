@@ -91,9 +91,6 @@ fn take_through<K: Assemble + 'static>(
         return Ok(false);
     };
     stage.check()?;
-    if let Some(face) = random.below_len(complex.faces.len()) {
-        check_overtaken_walks::<K>(capabilities, complex, face)?;
-    }
     if random.chance(1, 4) {
         // A compaction with nothing to drop moves nothing.
         stage.compact()?;
@@ -127,6 +124,9 @@ fn take_through<K: Assemble + 'static>(
     stage.check_refusals()?;
     stage.compact()?;
     stage.check()?;
+    if let Some(face) = random.below_len(complex.faces.len()) {
+        check_overtaken_walks::<K>(capabilities, complex, face)?;
+    }
     Ok(true)
 }
 

@@ -317,7 +317,7 @@ fn followed<I: Id, R: Id + Debug>(
     let column = column.follow(moved, None);
     scene.same(what, place, &new_bound, &column.values().len())?;
     for (&id, name) in live {
-        let arrived = moved.get(id).and_then(|new| column[new]);
+        let arrived = moved.get(id).and_then(|new| column.get(new).copied().flatten());
         scene.same(what, format_args!("column at {id:?}"), &Some(*name), &arrived)?;
     }
     Ok(())

@@ -38,10 +38,13 @@ pub fn check_steps<K: Topology>(on: &Paired<'_, K>) -> Result<(), Failure> {
         // The fused step and the single steps of the same kernel.
         let by_steps = mesh.is_plain(theirs).then(|| mesh.next(mesh.radial(theirs)));
         on.same("turn against next and radial", at, &by_steps, &mesh.turn(theirs))?;
-        on.same("edge_kind_at", at, &kind_of(reference, record.edge), &mesh.edge_kind_at(theirs))?;
         if K::COST.edge == Cost::Constant {
             on.same("runs_with_edge", at, &record.with, &mesh.runs_with_edge(theirs))?;
         }
+    }
+    for (&h, &theirs) in &on.ids.oriented_edges.theirs {
+        let kind = kind_of(reference, reference.uses[&h].edge);
+        on.same("edge_kind_at", format_args!("{h}"), &kind, &mesh.edge_kind_at(theirs))?;
     }
     Ok(())
 }
