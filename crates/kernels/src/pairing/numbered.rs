@@ -22,7 +22,9 @@ pub(super) fn check<C: Corners>(corners: C, uses: &[EdgeUse]) -> Result<Paired, 
                 *place = Some(ends);
                 edges = edges.max(listed.edge() as usize + 1);
             }
-            _ => fault = fault.or(Some((listed.edge(), number))),
+            Some(_) => fault = fault.or(Some((listed.edge(), number))),
+            // More numbers than corners: one of those below has no use, and is looked for then.
+            None => edges = count,
         }
     });
     if fault.is_none()

@@ -17,7 +17,7 @@ pub(super) fn link(buckets: &Buckets, links: &mut impl Links) -> (Vec<u32>, usiz
     let mut ends = 0;
     for (vertex, corners) in buckets.iter() {
         if let [first, ..] = corners {
-            if corners.len() <= MOST && link_ring(corners, &mut table, links) {
+            if corners.len() <= MOST && link_ring(vertex, corners, &mut table, links) {
                 links.sector(vertex, first[2]);
                 ends += corners.len();
             } else {
@@ -35,14 +35,22 @@ pub(super) fn link(buckets: &Buckets, links: &mut impl Links) -> (Vec<u32>, usiz
 /// as no collisions among so few; then every corner looks where the vertex behind it leads. No
 /// branch depends on the data until all is done. The table is all zero before and after.
 #[inline(always)]
-fn link_ring(corners: &[Corner], table: &mut [u64; TABLE], links: &mut impl Links) -> bool {
+fn link_ring(
+    vertex: u32,
+    corners: &[Corner],
+    table: &mut [u64; TABLE],
+    links: &mut impl Links,
+) -> bool {
     let mut taken = 0;
+    let mut at_itself = false;
     for (i, &[before, ..]) in corners.iter().enumerate() {
         let place = &mut table[before as usize % TABLE];
         taken |= *place;
+        // A use from the vertex to itself would be taken for its own twin.
+        at_itself |= before == vertex;
         *place = (u64::from(before) + 1) << 32 | i as u64;
     }
-    let mut fine = taken == 0;
+    let mut fine = taken == 0 && !at_itself;
     // Which corner is behind each, four bits a corner.
     let mut ring = 0_u64;
     for (j, &[_, behind, number]) in corners.iter().enumerate() {

@@ -29,9 +29,13 @@ impl TriangleAdjacency {
             .collect();
 
         let mut removed = RemovedFace { retired_edges: Vec::new(), moved_edges: Vec::new() };
-        for (i, &side) in sides.iter().enumerate() {
+        // All cycles before any is relinked: a second side on the same edge would not find back.
+        let cycles = sides.map(|side| {
             let mut uses: Vec<u32> = self.uses_of(side).collect();
             uses.sort_unstable();
+            uses
+        });
+        for (i, mut uses) in cycles.into_iter().enumerate() {
             if sides[..i].iter().any(|earlier| uses.contains(earlier)) {
                 // The face uses this edge twice, and it was unlinked with the first of them.
                 continue;
