@@ -292,6 +292,10 @@ impl<K: Topology> Topology for Planted<K> {
         Some(if self.has(Fault::TriangleBeginsElsewhere) { [b, c, a] } else { [a, b, c] })
     }
 
+    fn across(&self, h: K::OrientedEdge) -> K::Face {
+        if self.has(Fault::AcrossStaysHere) { self.inner.face(h) } else { self.inner.across(h) }
+    }
+
     fn index_buffer(&self) -> Option<&[[u32; 3]]> {
         (self.has(Fault::IndexBufferBackwards) && !self.buffer.is_empty()).then_some(&self.buffer)
     }

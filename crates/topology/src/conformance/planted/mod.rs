@@ -49,10 +49,11 @@ enum Fault {
     ThirdUseOfAnEdgeOfItsOwn,
     TwoArraysOfOneName,
     ErrorNamesTheNextCorner,
+    AcrossStaysHere,
 }
 
 /// Every fault, and what the suite must call the first thing it finds.
-const FAULTS: [(Fault, &str); 38] = [
+const FAULTS: [(Fault, &str); 39] = [
     (Fault::TurnsAtMisorientedEdges, "turn"),
     (Fault::TurnsAtBoundaries, "turn"),
     (Fault::MissesTheThirdUse, "radial"),
@@ -91,6 +92,7 @@ const FAULTS: [(Fault, &str); 38] = [
     (Fault::ThirdUseOfAnEdgeOfItsOwn, "edge"),
     (Fault::TwoArraysOfOneName, "names of arrays"),
     (Fault::ErrorNamesTheNextCorner, "assemble"),
+    (Fault::AcrossStaysHere, "across against radial and face"),
 ];
 
 const CAPABILITIES: Capabilities = Capabilities::everything("planted");

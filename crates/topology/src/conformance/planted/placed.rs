@@ -67,6 +67,7 @@ impl Topology for Placed {
         fn is_plain(&self, h: OrientedEdgeId) -> bool;
         fn face(&self, h: OrientedEdgeId) -> FaceId;
         fn triangle(&self, f: FaceId) -> Option<[OrientedEdgeId; 3]>;
+        fn across(&self, h: OrientedEdgeId) -> FaceId;
         fn index_buffer(&self) -> Option<&[[u32; 3]]>;
         fn footprint(&self) -> Footprint;
     }

@@ -158,6 +158,10 @@ impl Topology for Reference {
         }
     }
 
+    fn across(&self, h: OrientedEdgeId) -> FaceId {
+        self.face(self.radial(h))
+    }
+
     fn index_buffer(&self) -> Option<&[[u32; 3]]> {
         None
     }

@@ -38,6 +38,8 @@ pub fn check_steps<K: Topology>(on: &Paired<'_, K>) -> Result<(), Failure> {
         // The fused step and the single steps of the same kernel.
         let by_steps = mesh.is_plain(theirs).then(|| mesh.next(mesh.radial(theirs)));
         on.same("turn against next and radial", at, &by_steps, &mesh.turn(theirs))?;
+        let by_steps = mesh.face(mesh.radial(theirs));
+        on.same("across against radial and face", at, &by_steps, &mesh.across(theirs))?;
         if K::COST.edge == Cost::Constant {
             on.same("runs_with_edge", at, &record.with, &mesh.runs_with_edge(theirs))?;
         }
