@@ -187,3 +187,51 @@ pub fn check_overtaken_walks<K: Assemble + 'static>(
     stage.remove(face)?;
     probes.iter().try_for_each(|probe| probe(&stage.mesh, &stage.scene))
 }
+
+#[cfg(test)]
+mod tests {
+    use crate::conformance::Reference;
+    use crate::walks::WalkBroken;
+    use crate::{Assemble, FaceList, Topology, TopologyExt};
+
+    /// The last spoke of an open sector is where its first corner is entered: gone with it.
+    #[test]
+    fn spokes_end_when_the_corner_they_return_to_is_retired() {
+        let list = FaceList::triangles(4, &[[0, 1, 2], [0, 2, 3]]);
+        let mut mesh = Reference::assemble(list).unwrap();
+        let v = mesh.vertices().next().unwrap();
+        let mut walk = mesh.vertex_spokes(v).detach();
+        let mut first = None;
+        for _ in 0..2 {
+            let spoke = walk.step(&mesh).unwrap().unwrap();
+            first = first.or(Some(spoke.oriented_edge));
+        }
+        let face = mesh.face(first.unwrap());
+        mesh.remove_face(face).unwrap();
+        assert_eq!(walk.step(&mesh), Err(WalkBroken::Retired));
+    }
+
+    /// Four corners on one edge meet three others each: more items than there are slots.
+    #[test]
+    fn a_relation_longer_than_the_slots_is_not_taken_for_endless() {
+        let list = FaceList::polygons(2, &[0, 1, 0, 1], &[4]).unwrap();
+        let mesh = Reference::assemble(list).unwrap();
+        let mut walk = mesh.face_faces(mesh.faces().next().unwrap()).detach();
+        let mut count = 0;
+        while walk.step(&mesh).unwrap().is_some() {
+            count += 1;
+        }
+        assert_eq!(count, 12);
+    }
+
+    #[test]
+    fn steps_beyond_the_end_are_not_counted() {
+        let list = FaceList::polygons(1, &[0], &[1]).unwrap();
+        let mesh = Reference::assemble(list).unwrap();
+        let mut walk = mesh.loop_corners(mesh.oriented_edges().next().unwrap()).detach();
+        assert!(walk.step(&mesh).unwrap().is_some());
+        for _ in 0..9 {
+            assert_eq!(walk.step(&mesh), Ok(None));
+        }
+    }
+}
