@@ -7,7 +7,7 @@ use merestone_topology::walks::next_corner_around;
 use merestone_topology::{Id, Topology};
 
 /// Finds the handles of a vertex's sectors. Owns its workspace, to be used for many vertices.
-#[derive(Debug, Default)]
+#[derive(Debug)]
 pub(crate) struct SectorSearch<H> {
     /// For each corner given, whether a sector has it already.
     seen: Vec<bool>,
