@@ -56,23 +56,21 @@ pub(super) fn link(
     list: &FaceList<'_>,
     peak: &mut Peak,
 ) -> Result<(Vec<u32>, Vec<u32>), FaceListError> {
-    let count = edge.iter().map(|use_| (use_ & !TOP) as usize + 1).max().unwrap_or(0);
-    // More numbers than uses leave a gap below; memory follows the uses, never the numbers.
-    let held = count.min(edge.len());
-    let mut first = peak.held(vec![NONE; held]);
-    let mut last = peak.held(vec![NONE; held]);
-    let mut radial = peak.held(vec![0; edge.len()]);
+    let count = edge.iter().map(|used| (used & !TOP) as usize + 1).max().unwrap_or(0);
     let ends = |h: usize| {
         let (from, to) = (start[h], start[loops.next(h as u32) as usize]);
         if edge[h] < TOP { (from, to) } else { (to, from) }
     };
-    for h in 0..edge.len() {
-        let number = edge[h] & !TOP;
-        let (Some(first), Some(last)) =
-            (first.get_mut(number as usize), last.get_mut(number as usize))
-        else {
-            continue;
-        };
+    // More numbers than uses leave a gap; memory follows the uses, never the numbers.
+    if count > edge.len() {
+        return Err(explain_gap(edge, ends, list));
+    }
+    let mut first = peak.held(vec![NONE; count]);
+    let mut last = peak.held(vec![NONE; count]);
+    let mut radial = peak.held(vec![0; edge.len()]);
+    for (h, &used) in edge.iter().enumerate() {
+        let number = used & !TOP;
+        let (first, last) = (&mut first[number as usize], &mut last[number as usize]);
         if *first == NONE {
             *first = h as u32;
         } else {
@@ -84,10 +82,8 @@ pub(super) fn link(
         }
         *last = h as u32;
     }
-    if let Some(gap) = first.iter().position(|&h| h == NONE) {
-        let beyond = edge.iter().position(|&use_| (use_ & !TOP) as usize > gap).unwrap_or(0);
-        let corner = corner_of(list, beyond);
-        return Err(FaceListError::InconsistentEdge { edge: gap as u32, corner });
+    if first.contains(&NONE) {
+        return Err(explain_gap(edge, ends, list));
     }
     for (&first, &last) in first.iter().zip(&last) {
         radial[last as usize] = first | TOP;
@@ -99,6 +95,30 @@ pub(super) fn link(
     }
     peak.drop(last);
     Ok((radial, first))
+}
+
+/// What is wrong with numbers that have a gap: the first contradiction, else the gap.
+#[cold]
+fn explain_gap(
+    edge: &[u32],
+    ends: impl Fn(usize) -> (u32, u32),
+    list: &FaceList<'_>,
+) -> FaceListError {
+    let mut sorted: Vec<(u32, usize)> =
+        edge.iter().enumerate().map(|(h, used)| (used & !TOP, h)).collect();
+    sorted.sort_unstable();
+    let groups = || sorted.chunk_by(|a, b| a.0 == b.0);
+    let contradicting = groups().filter_map(|uses| {
+        uses.iter().find(|&&(_, h)| ends(h) != ends(uses[0].1)).map(|&(edge, h)| (h, edge))
+    });
+    let gap = || {
+        let gap = (0..).zip(groups()).find(|(number, uses)| *number != uses[0].0);
+        let gap = gap.map_or(0, |(number, _)| number);
+        let beyond = edge.iter().position(|&used| used & !TOP > gap).unwrap_or(0);
+        (beyond, gap)
+    };
+    let (h, edge) = contradicting.min().unwrap_or_else(gap);
+    FaceListError::InconsistentEdge { edge, corner: corner_of(list, h) }
 }
 
 /// The entries of vertices with one cyclic sector of plain edges; [`LATER`] for all others.
