@@ -1,6 +1,6 @@
 //! Assembling.
 
-use super::loops::{Linked, Survey, Threes, lay_out};
+use super::loops::{Every, Linked, Survey, lay_out};
 use super::pairing::{Buckets, number_edges, pair};
 use super::vertices::listed_vertex_loops;
 use super::{Full, HalfEdge, numbered};
@@ -22,7 +22,7 @@ impl Assemble for HalfEdge<Full> {
         let buckets = Buckets::new(&mesh.links.start, list.vertex_count(), &mut peak);
         let loops = listed_vertex_loops(&list, survey.vertex_loops, &mut peak);
         match list.edge_uses() {
-            None => mesh.pair_by_corners(buckets, &loops, &mut peak),
+            None => mesh.pair_by_corners(&survey, buckets, &loops, &mut peak),
             Some(uses) => mesh.link_by_numbers(&list, uses, buckets, &loops, &mut peak)?,
         }
         mesh.vertices = Slots::new(list.vertex_count());
@@ -47,15 +47,21 @@ impl Assemble for HalfEdge<Full> {
 
 impl HalfEdge<Full> {
     /// Makes one edge for each pair of vertices.
-    fn pair_by_corners(&mut self, buckets: Buckets, vertex_loops: &[(u32, u32)], peak: &mut Peak) {
+    fn pair_by_corners(
+        &mut self,
+        survey: &Survey,
+        buckets: Buckets,
+        vertex_loops: &[(u32, u32)],
+        peak: &mut Peak,
+    ) {
         let Full { next, prev, start, face, radial, .. } = &mut self.links;
         *radial = peak.held(vec![0; start.len()]);
         self.vertex = peak.held(vec![0; buckets.ends.len()]);
         let entries = &mut self.vertex;
-        let edges = if self.in_threes {
-            pair(&Threes, start, &buckets, face, radial, entries, peak)
-        } else {
-            pair(&Linked { next, prev }, start, &buckets, face, radial, entries, peak)
+        let edges = match survey.corners_each {
+            Some(3) => pair(&Every::<3>, start, &buckets, face, radial, entries, peak),
+            Some(4) => pair(&Every::<4>, start, &buckets, face, radial, entries, peak),
+            _ => pair(&Linked { next, prev }, start, &buckets, face, radial, entries, peak),
         };
         self.settle(&buckets, vertex_loops, peak);
         let Full { next, prev, start, face, radial, edge, edge_use } = &mut self.links;

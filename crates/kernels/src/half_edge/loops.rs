@@ -8,8 +8,8 @@ use merestone_topology::FaceList;
 /// What a face list holds beyond one edge loop a face.
 #[derive(Clone, Copy, Debug)]
 pub(super) struct Survey {
-    /// Whether every face is one loop of three corners.
-    pub(super) in_threes: bool,
+    /// The number of corners every face has, where each is one edge loop of as many.
+    pub(super) corners_each: Option<usize>,
     /// How many loops are bare vertices.
     pub(super) vertex_loops: usize,
     /// How many faces are not just one edge loop.
@@ -19,44 +19,47 @@ pub(super) struct Survey {
 
 impl Survey {
     pub(super) fn of(list: &FaceList<'_>) -> Self {
-        let mut survey = Self { in_threes: true, vertex_loops: 0, faces_aside: 0, inner_loops: 0 };
+        let mut survey =
+            Self { corners_each: Some(3), vertex_loops: 0, faces_aside: 0, inner_loops: 0 };
         if list.as_triangles().is_some() {
             return survey;
         }
+        let first = list.listed_loop(0).map_or(3, |listed| listed.corners.len());
+        let mut all_alike = true;
         for face in 0..list.face_count() {
             let (mut loops, mut bare) = (0, 0);
             for listed in list.loops(face) {
                 loops += 1;
                 bare += usize::from(listed.is_vertex_loop);
-                survey.in_threes &= listed.corners.len() == 3;
+                all_alike &= listed.corners.len() == first;
             }
             survey.vertex_loops += bare;
             survey.inner_loops += loops - 1;
             survey.faces_aside += usize::from(loops > 1 || bare > 0);
         }
-        survey.in_threes &= survey.faces_aside == 0;
+        survey.corners_each = (all_alike && survey.faces_aside == 0).then_some(first);
         survey
     }
 }
 
-/// One way to step in the loops: by arithmetic or by links.
+/// A way to step in the loops: by arithmetic or by links.
 pub(super) trait Loops {
     fn next(&self, h: u32) -> u32;
     fn prev(&self, h: u32) -> u32;
 }
 
-/// Every three oriented edges are a loop.
-pub(super) struct Threes;
+/// Every `K` oriented edges are a loop.
+pub(super) struct Every<const K: u32>;
 
-impl Loops for Threes {
+impl<const K: u32> Loops for Every<K> {
     #[inline(always)]
     fn next(&self, h: u32) -> u32 {
-        if h % 3 == 2 { h - 2 } else { h + 1 }
+        if h % K == K - 1 { h + 1 - K } else { h + 1 }
     }
 
     #[inline(always)]
     fn prev(&self, h: u32) -> u32 {
-        if h.is_multiple_of(3) { h + 2 } else { h - 1 }
+        if h.is_multiple_of(K) { h + K - 1 } else { h - 1 }
     }
 }
 
@@ -86,21 +89,14 @@ pub(super) fn lay_out(
     peak: &mut Peak,
 ) {
     let count = list.corner_count() - survey.vertex_loops;
-    mesh.in_threes = survey.in_threes;
+    mesh.in_threes = survey.corners_each == Some(3);
     mesh.inner_loops = survey.inner_loops;
-    let links = &mut mesh.links;
-    if survey.in_threes {
-        links.start = peak.held(list.corners().to_vec());
-        links.next = peak.held(vec![0; count]);
-        links.prev = peak.held(vec![0; count]);
-        links.face = peak.held(vec![0; count]);
-        mesh.face = peak.held(vec![0; count / 3]);
-        (0..).step_by(3).zip(&mut mesh.face).for_each(|(first, entry)| *entry = first);
-        fill_threes(&mut links.next, |h| [h + 1, h + 2, h]);
-        fill_threes(&mut links.prev, |h| [h + 2, h, h + 1]);
-        fill_threes(&mut links.face, |h| [h / 3; 3]);
-        return;
+    match survey.corners_each {
+        Some(3) => return lay_out_alike::<3>(mesh, list, peak),
+        Some(4) => return lay_out_alike::<4>(mesh, list, peak),
+        _ => {}
     }
+    let links = &mut mesh.links;
     links.next = peak.held(Vec::with_capacity(count));
     links.prev = peak.held(Vec::with_capacity(count));
     links.face = peak.held(Vec::with_capacity(count));
@@ -133,9 +129,29 @@ pub(super) fn lay_out(
     peak.hold(mesh.face_bounds.bytes());
 }
 
-fn fill_threes(links: &mut [u32], of: impl Fn(u32) -> [u32; 3]) {
-    for (three, first) in links.as_chunks_mut::<3>().0.iter_mut().zip((0..).step_by(3)) {
-        *three = of(first);
+/// The same where every face is one loop of `K` corners.
+fn lay_out_alike<const K: usize>(mesh: &mut HalfEdge<Full>, list: &FaceList<'_>, peak: &mut Peak) {
+    let count = list.corner_count();
+    let links = &mut mesh.links;
+    links.start = peak.held(list.corners().to_vec());
+    links.next = peak.held(vec![0; count]);
+    links.prev = peak.held(vec![0; count]);
+    links.face = peak.held(vec![0; count]);
+    mesh.face = peak.held(vec![0; count / K]);
+    let faces = (links.next.as_chunks_mut::<K>().0.iter_mut())
+        .zip(links.prev.as_chunks_mut::<K>().0)
+        .zip(links.face.as_chunks_mut::<K>().0)
+        .zip(&mut mesh.face);
+    let (mut number, mut first) = (0, 0);
+    for (((next, prev), face), entry) in faces {
+        for i in 0..K {
+            next[i] = first + ((i + 1) % K) as u32;
+            prev[i] = first + ((i + K - 1) % K) as u32;
+            face[i] = number;
+        }
+        *entry = first;
+        number += 1;
+        first += K as u32;
     }
 }
 

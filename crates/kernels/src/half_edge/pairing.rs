@@ -54,7 +54,7 @@ impl Buckets {
     }
 }
 
-/// Up to this many corners a vertex is paired by comparing all with all.
+/// Up to this many corners a vertex is paired by comparing all with all, up to 8 faster.
 const FEW: usize = 16;
 
 /// Links all uses and finds the sectors of ordinary vertices.
@@ -76,7 +76,8 @@ pub(super) fn pair(
     for ((v, corners), entry) in buckets.iter().zip(vertex) {
         let found = match corners.len() {
             0 => Some(NONE),
-            1..=FEW => pairing.few(v, corners),
+            1..=8 => pairing.few::<8>(v, corners),
+            9..=FEW => pairing.few::<FEW>(v, corners),
             _ => None,
         };
         *entry = found.unwrap_or_else(|| {
@@ -102,23 +103,27 @@ struct Pairing<'a, L> {
     other_edges: usize,
 }
 
-/// The two sides of each corner of a vertex.
-struct Sides {
+/// The two sides of each of up to `W` corners of a vertex.
+struct Sides<const W: usize> {
     count: usize,
     /// The oriented edge each corner is entered by.
-    entering: [u32; FEW],
-    /// The vertex it comes from.
-    from: [u32; FEW],
+    entering: [u32; W],
+    /// The vertex it comes from; no vertex at all from `count` on.
+    from: [u32; W],
     /// The vertex the corner is left for.
-    to: [u32; FEW],
+    to: [u32; W],
 }
 
-impl Sides {
-    /// The corners entered from `x`, a bit each.
+impl<const W: usize> Sides<W> {
+    /// The corners entered from `x`, a bit each. Always looks at all `W`: a fixed number of
+    /// comparisons is a few vector instructions.
     #[inline(always)]
     fn entered_from(&self, x: u32) -> u32 {
-        let compare = |bits, (j, &from)| bits | u32::from(from == x) << j;
-        self.from[..self.count].iter().enumerate().fold(0, compare)
+        let mut bits = 0;
+        for j in 0..W {
+            bits |= u32::from(self.from[j] == x) << j;
+        }
+        bits
     }
 
     /// All corners, a bit each.
@@ -132,25 +137,21 @@ impl<L: Loops> Pairing<'_, L> {
     /// Links what leaves `v`, and returns the entry of `v` when its sectors were seen, unless an
     /// edge at `v` is neither plain nor a boundary: then returns `None`.
     #[inline(always)]
-    fn few(&mut self, v: u32, corners: &[u32]) -> Option<u32> {
-        let mut sides = Sides {
-            count: corners.len().min(FEW),
-            entering: [0; FEW],
-            from: [0; FEW],
-            to: [0; FEW],
-        };
-        for (i, &corner) in corners.iter().enumerate().take(FEW) {
+    fn few<const W: usize>(&mut self, v: u32, corners: &[u32]) -> Option<u32> {
+        let mut sides =
+            Sides { count: corners.len().min(W), entering: [0; W], from: [NONE; W], to: [0; W] };
+        for (i, &corner) in corners.iter().enumerate().take(W) {
             let entering = self.loops.prev(corner);
             sides.entering[i] = entering;
             sides.from[i] = self.start[entering as usize];
             sides.to[i] = self.start[self.loops.next(corner) as usize];
         }
-        let mut turns = [0; FEW];
+        let mut turns = [0; W];
         let mut taken = 0;
         let mut ordinary = true;
-        for (i, &corner) in corners.iter().enumerate().take(FEW) {
+        for (i, &corner) in corners.iter().enumerate().take(W) {
             let behind = sides.entered_from(sides.to[i]);
-            let turn = behind.trailing_zeros() as usize % FEW;
+            let turn = behind.trailing_zeros() as usize % W;
             ordinary &= behind & behind.wrapping_sub(1) == 0 && sides.to[i] != v;
             taken |= behind;
             turns[i] = turn as u8;
@@ -163,7 +164,7 @@ impl<L: Loops> Pairing<'_, L> {
         self.plain_uses += sides.count;
         let mut at = 0;
         for steps in 1..=sides.count {
-            at = usize::from(turns[at]) % FEW;
+            at = usize::from(turns[at]) % W;
             if at == 0 {
                 return Some(if steps == sides.count { corners[0] } else { LATER });
             }
@@ -173,9 +174,14 @@ impl<L: Loops> Pairing<'_, L> {
 
     /// The same with boundary edges at `v`.
     #[cold]
-    fn few_with_boundary(&mut self, v: u32, corners: &[u32], sides: &Sides) -> Option<u32> {
+    fn few_with_boundary<const W: usize>(
+        &mut self,
+        v: u32,
+        corners: &[u32],
+        sides: &Sides<W>,
+    ) -> Option<u32> {
         let (from, to) = (&sides.from[..sides.count], &sides.to[..sides.count]);
-        let mut turns = [None; FEW];
+        let mut turns = [None; W];
         let mut taken = 0;
         for (i, &x) in to.iter().enumerate() {
             let behind = sides.entered_from(x);
