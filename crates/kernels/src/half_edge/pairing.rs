@@ -180,7 +180,7 @@ impl<L: Loops> Pairing<'_, L> {
         corners: &[u32],
         sides: &Sides<W>,
     ) -> Option<u32> {
-        let (from, to) = (&sides.from[..sides.count], &sides.to[..sides.count]);
+        let to = &sides.to[..sides.count];
         let mut turns = [None; W];
         let mut taken = 0;
         for (i, &x) in to.iter().enumerate() {
@@ -200,11 +200,10 @@ impl<L: Loops> Pairing<'_, L> {
             self.plain_uses += usize::from(turns[i].is_some());
             self.other_edges += usize::from(turns[i].is_none());
         }
-        // Only what is entered through no other corner's exit can begin an open sector.
+        // An entry without an exit begins an open sector, and there is one: every exit has at
+        // most one entry behind it, and not all entries are taken. If there are more, or rings
+        // beside it, the sector of the first misses some corners.
         let first = (sides.all() & !taken).trailing_zeros() as usize;
-        if first >= sides.count || from.iter().filter(|&&x| x == from[first]).count() > 1 {
-            return Some(LATER);
-        }
         let (mut at, mut steps) = (first, 1);
         while let Some(turn) = turns[at] {
             (at, steps) = (turn, steps + 1);
