@@ -7,7 +7,7 @@ mod scalar;
 mod soup;
 mod sums;
 
-pub use brep::{Brep, BuildError, NotATriangle, Polygons, TriangleMesh, Triangles};
+pub use brep::{Brep, BuildError, Mesh, NotATriangle, Polygons, TriangleMesh, Triangles};
 pub use scalar::Scalar;
 pub use soup::{
     AttributeColumn, AttributeValues, CleanSoup, CollapsedLoop, DuplicateFace, Note, NoteKind,

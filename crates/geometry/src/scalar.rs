@@ -14,6 +14,7 @@ pub trait Scalar: RealField + Copy + sealed::Sealed {
 }
 
 mod sealed {
+    #[expect(unnameable_types, reason = "what cannot be named cannot be implemented elsewhere")]
     pub trait Sealed {}
     impl Sealed for f32 {}
     impl Sealed for f64 {}

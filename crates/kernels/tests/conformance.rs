@@ -1,6 +1,6 @@
 //! Every kernel against the naive reference topology.
 
-use merestone_kernels::TriangleAdjacency;
+use merestone_kernels::{HalfEdge, TriangleAdjacency};
 use merestone_topology::conformance::Capabilities;
 use merestone_topology::conformance_suite;
 
@@ -9,3 +9,4 @@ conformance_suite!(
     TriangleAdjacency,
     Capabilities { edge_numbers: true, ..Capabilities::triangles("triangle") }
 );
+conformance_suite!(half_edge, HalfEdge, Capabilities::everything("half-edge"));

@@ -47,11 +47,11 @@ impl<K: Assemble, S: Scalar> Brep<K, S> {
     /// A mesh of polygons over `points`, each face one loop of point numbers.
     ///
     /// ```
-    /// use merestone_geometry::TriangleMesh;
+    /// use merestone_geometry::Mesh;
     /// use merestone_topology::Topology;
     /// let points = [[0.0, 0.0, 0.0], [2.0, 0.0, 0.0], [2.0, 1.0, 0.0], [0.0, 1.0, 0.0]];
-    /// let mesh = TriangleMesh::from_polygons(points, [[0, 1, 2], [0, 2, 3]])?;
-    /// assert_eq!((mesh.edge_count(), mesh.area()), (5, 2.0));
+    /// let mesh = Mesh::from_polygons(points, [[0, 1, 2, 3]])?;
+    /// assert_eq!((mesh.edge_count(), mesh.area()), (4, 2.0));
     /// # Ok::<(), merestone_geometry::BuildError>(())
     /// ```
     ///

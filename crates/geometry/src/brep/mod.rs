@@ -7,11 +7,14 @@ pub use build::BuildError;
 pub use export::{NotATriangle, Polygons, Triangles};
 
 use crate::scalar::Scalar;
-use merestone_kernels::TriangleAdjacency;
+use merestone_kernels::{HalfEdge, TriangleAdjacency};
 use merestone_topology::{Assemble, Column, Compaction, EditError, Topology, TopologyExt};
 use nalgebra::Point3;
 use std::fmt::{self, Debug};
 use std::ops::Deref;
+
+/// The everyday mesh: any polygons, on the half-edge kernel, in double precision.
+pub type Mesh = Brep<HalfEdge, f64>;
 
 /// A mesh of triangles in the smallest space: the triangle kernel, in double precision.
 pub type TriangleMesh = Brep<TriangleAdjacency, f64>;
@@ -22,7 +25,7 @@ pub type TriangleMesh = Brep<TriangleAdjacency, f64>;
 /// takes a topology takes `&*mesh`. Coordinates have no unit.
 ///
 /// ```
-/// use merestone_geometry::TriangleMesh as Mesh;
+/// use merestone_geometry::Mesh;
 /// use merestone_topology::TopologyExt;
 /// let points = [[0.0, 0.0, 0.0], [1.0, 0.0, 0.0], [0.0, 1.0, 0.0], [0.0, 0.0, 1.0]];
 /// let faces = [[0, 2, 1], [0, 1, 3], [1, 2, 3], [2, 0, 3]];

@@ -224,6 +224,11 @@ impl Topology for HalfEdge<Full> {
         self.in_threes.then(|| [first, first + 1, first + 2].map(oriented))
     }
 
+    #[inline(always)]
+    fn across(&self, h: OrientedEdgeId) -> FaceId {
+        self.face(self.radial(h))
+    }
+
     #[inline]
     fn index_buffer(&self) -> Option<&[[u32; 3]]> {
         self.in_threes.then(|| self.links.start.as_chunks::<3>().0)

@@ -5,6 +5,7 @@ use crate::relations::{
     EdgeEdgesState, EdgeEndsState, EdgeFacesState, FaceEdgesState, FaceFacesState,
     FaceVerticesState, VertexEdgesState, VertexFacesState, VertexVerticesState, edge_ends_of,
 };
+use crate::views::{DefectsOf, Manifold, OrientedManifold, SolidBoundary};
 use crate::walks::{
     BoundaryState, FaceBoundsState, FaceCornersState, LoopState, SectorHandlesState, SectorState,
     SpokesState, UsesState, VertexCornersState, Walk,
@@ -244,6 +245,39 @@ pub trait TopologyExt: Topology {
         self.vertex_edge_ends(a)
             .find(|spoke| spoke.far_end(self) == b)
             .map(|spoke| self.edge(spoke.oriented_edge))
+    }
+
+    /// This topology as a [`Manifold`], after a check. O(uses).
+    ///
+    /// # Errors
+    /// Every defect, as [`Manifold::new`] lists them.
+    fn manifold(&self) -> Result<Manifold<'_, Self>, DefectsOf<Self>>
+    where
+        Self: Sized,
+    {
+        Manifold::new(self)
+    }
+
+    /// This topology as an [`OrientedManifold`], after a check. O(uses).
+    ///
+    /// # Errors
+    /// Every defect, as [`OrientedManifold::new`] lists them.
+    fn oriented_manifold(&self) -> Result<OrientedManifold<'_, Self>, DefectsOf<Self>>
+    where
+        Self: Sized,
+    {
+        OrientedManifold::new(self)
+    }
+
+    /// This topology as the boundary of a solid, after a check. O(uses).
+    ///
+    /// # Errors
+    /// Every defect, as [`SolidBoundary::new`] lists them; displays as one line that says why not.
+    fn solid_boundary(&self) -> Result<SolidBoundary<'_, Self>, DefectsOf<Self>>
+    where
+        Self: Sized,
+    {
+        SolidBoundary::new(self)
     }
 
     /// V − E + F − R of the live cells, R the inner loops.
