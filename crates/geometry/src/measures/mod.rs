@@ -1,9 +1,11 @@
 //! Normals, area and volume.
 
+mod lanes;
+
 use crate::brep::Brep;
 use crate::scalar::Scalar;
 use crate::sums::Sum;
-use merestone_topology::{FaceBound, Topology, TopologyExt};
+use merestone_topology::{Column, FaceBound, Id, Topology, TopologyExt};
 use nalgebra::{Point3, Vector3};
 
 impl<K: Topology, S: Scalar> Brep<K, S> {
@@ -16,14 +18,21 @@ impl<K: Topology, S: Scalar> Brep<K, S> {
     #[inline]
     #[must_use]
     pub fn newell_vector(&self, face: K::Face) -> Vector3<f64> {
-        if let Some([a, b, c]) = self.topology().triangle(face) {
-            let [a, b, c] = [c, a, b].map(|h| self.position(self.topology().end(h)));
+        if let Some([a, b, c]) = self.triangle_positions(face) {
             return (b - a).cross(&(c - a));
         }
         self.topology().face_bounds(face).fold(Vector3::zeros(), |sum, bound| match bound {
             FaceBound::EdgeLoop(h) => sum + self.loop_vector(h),
             FaceBound::VertexLoop(_) => sum,
         })
+    }
+
+    /// The corners of a triangle from any of them on, where the kernel has them in one place.
+    #[inline(always)]
+    fn triangle_positions(&self, face: K::Face) -> Option<[Point3<f64>; 3]> {
+        let points = self.points().values();
+        let place = |v: u32| Point3::from(points[v as usize].map(Scalar::widen));
+        self.topology().index_buffer().map(|triangles| triangles[face.index()].map(place))
     }
 
     /// The Newell vector of the loop through `h`.
@@ -44,6 +53,34 @@ impl<K: Topology, S: Scalar> Brep<K, S> {
     #[must_use]
     pub fn face_normal(&self, face: K::Face) -> Vector3<f64> {
         unit(self.newell_vector(face))
+    }
+
+    /// The unit normals of all faces into a column, as [`face_normal`](Self::face_normal) gives
+    /// them up to rounding; retired slots get anything. O(corners).
+    ///
+    /// Where the kernel keeps triangles in one place, eight are taken at a time, in vector
+    /// registers.
+    ///
+    /// ```
+    /// use merestone_geometry::TriangleMesh;
+    /// use merestone_topology::TopologyExt;
+    /// let points = [[0.0, 0.0, 0.0], [1.0, 0.0, 0.0], [0.0, 1.0, 0.0]];
+    /// let mesh = TriangleMesh::from_triangles(points, &[[0, 1, 2]])?;
+    /// let mut normals = mesh.face_column([0.0; 3]);
+    /// mesh.face_normals_into(&mut normals);
+    /// assert_eq!(normals.values(), [[0.0, 0.0, 1.0]]);
+    /// # Ok::<(), merestone_geometry::BuildError>(())
+    /// ```
+    pub fn face_normals_into(&self, normals: &mut Column<K::Face, [f64; 3]>) {
+        let mesh = self.topology();
+        if let Some(triangles) = mesh.index_buffer()
+            && mesh.face_count() == triangles.len()
+            && normals.values().len() >= triangles.len()
+        {
+            lanes::unit_normals(self.points().values(), triangles, normals.values_mut());
+            return;
+        }
+        mesh.faces().for_each(|face| normals[face] = self.face_normal(face).into());
     }
 
     /// The area of a face: half the length of its Newell vector. O(corners).
@@ -80,8 +117,8 @@ impl<K: Topology, S: Scalar> Brep<K, S> {
     #[inline]
     pub(crate) fn cone(&self, face: K::Face, apex: Point3<f64>) -> f64 {
         let mesh = self.topology();
-        if let Some([a, b, c]) = mesh.triangle(face) {
-            let [a, b, c] = [c, a, b].map(|h| self.position(mesh.end(h)) - apex);
+        if let Some(corners) = self.triangle_positions(face) {
+            let [a, b, c] = corners.map(|p| p - apex);
             return a.dot(&b.cross(&c)) / 6.0;
         }
         mesh.face_bounds(face).fold(0.0, |sum, bound| match bound {
@@ -96,7 +133,7 @@ impl<K: Topology, S: Scalar> Brep<K, S> {
 
 /// `v` at length one, or zero where it is zero.
 #[inline(always)]
-fn unit(v: Vector3<f64>) -> Vector3<f64> {
+pub(crate) fn unit(v: Vector3<f64>) -> Vector3<f64> {
     let squared = v.norm_squared();
     if squared > 0.0 && squared.is_finite() {
         return v / squared.sqrt();
