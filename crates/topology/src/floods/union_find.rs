@@ -62,10 +62,12 @@ impl UnionFind {
     pub(crate) fn join_below(&mut self, a: u32, others: &[u32]) {
         let parents = &mut self.parents[..];
         let least = others.iter().fold(a, |least, &other| least.min(parents[other as usize]));
+        // One branch for all: where sets are large already, it is hardly ever taken.
+        let apart =
+            others.iter().fold(false, |b, &o| b | ((parents[o as usize] != least) & (o != a)));
         parents[a as usize] = least;
-        for &other in others {
-            let parent = self.parents[other as usize];
-            if parent != least && other != a {
+        if apart {
+            for &other in others {
                 self.union(a, other);
             }
         }

@@ -351,3 +351,40 @@ impl<H: crate::Id> Stand<H> {
 pub(crate) fn oriented_edge_lives<K: Topology + ?Sized>(mesh: &K, h: K::OrientedEdge) -> bool {
     mesh.oriented_edge_at(crate::Id::index(h)) == Some(h)
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::{FaceId, OrientedEdgeId, VertexId};
+
+    /// An id as a kernel with generational keys has it: a key of 8 bytes and a slot.
+    #[derive(Clone)]
+    struct Wide {
+        _key: [u32; 2],
+        _slot: u32,
+    }
+
+    #[test]
+    fn detached_walks_weigh_what_their_docs_say() {
+        type H = OrientedEdgeId;
+        assert_eq!(size_of::<Detached<SectorState<H>>>(), 12);
+        assert_eq!(size_of::<Detached<LoopState<H>>>(), 12);
+        assert_eq!(size_of::<Detached<UsesState<H>>>(), 12);
+        assert_eq!(size_of::<Detached<BoundaryState<H>>>(), 12);
+        assert_eq!(size_of::<Detached<UsesState<Wide>>>(), 28);
+        assert_eq!(size_of::<Detached<SectorHandlesState<VertexId>>>(), 8);
+        assert_eq!(size_of::<Detached<FaceBoundsState<FaceId>>>(), 8);
+        assert_eq!(size_of::<Detached<VertexCornersState<H>>>(), 16);
+    }
+
+    #[test]
+    fn a_tally_counts_beside_its_flags() {
+        let mut tally = Tally::ZERO;
+        tally.set_backward(true);
+        tally.set_more(true);
+        assert!(tally.spend(2) && tally.spend(2) && tally.spend(2) && !tally.spend(2));
+        assert!(tally.backward() && tally.more() && !tally.done() && !tally.reversed());
+        assert_eq!(format!("{tally:?}"), "3 steps, backward, more");
+        assert!(!tally.without_flags().has_flags());
+    }
+}

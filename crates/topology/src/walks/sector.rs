@@ -20,9 +20,12 @@ impl<H: Id> SectorState<H> {
     where
         K: Topology<OrientedEdge = H> + ?Sized,
     {
-        let mut state = Self::new(mesh.sector(vertex, 0)?);
-        state.0.tally.set_more(mesh.sector(vertex, 1).is_some());
-        Some(state)
+        let handle = mesh.sector(vertex, 0)?;
+        let mut stand = Stand::new(handle);
+        if mesh.sector(vertex, 1).is_some() {
+            stand.tally.set_more(true);
+        }
+        Some(Self(stand))
     }
 
     /// The vertex's next sector after this one, if any.
