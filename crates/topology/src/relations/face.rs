@@ -1,7 +1,7 @@
 //! From a face: to vertices, edges and faces.
 
 use super::mapped_walk;
-use crate::walks::{FaceCornersState, LoopState, Tally, WalkState};
+use crate::walks::{FaceCornersState, FacePlaces, Tally, WalkState};
 use crate::{FaceBound, Id, Topology};
 
 mapped_walk!(
@@ -14,18 +14,24 @@ mapped_walk!(
 /// The vertices of a face, one for each corner in loop order, outer first; vertex loops in their
 /// place among the bounds.
 #[derive(Clone, Debug, PartialEq, Eq)]
-pub struct FaceVerticesState<F, H> {
-    face: F,
-    /// The number of the next bound.
-    number: u32,
-    ring: Option<LoopState<H>>,
-}
+pub struct FaceVerticesState<F, H>(FacePlaces<F, H>);
 
 impl<F: Id, H: Id> FaceVerticesState<F, H> {
     /// From a face's outer bound.
     #[inline(always)]
     pub fn new(face: F) -> Self {
-        Self { face, number: 0, ring: None }
+        Self(FacePlaces::new(face))
+    }
+}
+
+#[inline(always)]
+fn vertex_at<K>(mesh: &K, place: FaceBound<K::OrientedEdge, K::Vertex>) -> K::Vertex
+where
+    K: Topology + ?Sized,
+{
+    match place {
+        FaceBound::EdgeLoop(h) => mesh.start(h),
+        FaceBound::VertexLoop(v) => v,
     }
 }
 
@@ -34,56 +40,24 @@ impl<K: Topology + ?Sized> WalkState<K> for FaceVerticesState<K::Face, K::Orient
 
     #[inline]
     fn advance(&mut self, mesh: &K) -> Option<K::Vertex> {
-        loop {
-            if let Some(ring) = &mut self.ring
-                && let Some(h) = WalkState::<K>::advance(ring, mesh)
-            {
-                return Some(mesh.start(h));
-            }
-            let bound = mesh.bound(self.face, self.number as usize)?;
-            self.number += 1;
-            match bound {
-                FaceBound::EdgeLoop(h) => self.ring = Some(LoopState::new(h)),
-                FaceBound::VertexLoop(v) => return Some(v),
-            }
-        }
+        WalkState::<K>::advance(&mut self.0, mesh).map(|place| vertex_at(mesh, place))
     }
 
     #[inline]
     fn fold<B>(self, mesh: &K, init: B, mut f: impl FnMut(B, K::Vertex) -> B) -> B {
-        let mut accumulated = init;
-        if self.number == 0
-            && let Some([a, b, c]) = mesh.triangle(self.face)
-        {
+        if let Some([a, b, c]) = self.0.triangle(mesh) {
             // Ends are at hand in every kernel; starts may take arithmetic.
-            return [c, a, b].into_iter().fold(accumulated, |acc, h| f(acc, mesh.end(h)));
+            return [c, a, b].into_iter().fold(init, |acc, h| f(acc, mesh.end(h)));
         }
-        if let Some(ring) = self.ring {
-            accumulated =
-                WalkState::<K>::fold(ring, mesh, accumulated, |acc, h| f(acc, mesh.start(h)));
-        }
-        let mut number = self.number as usize;
-        while let Some(bound) = mesh.bound(self.face, number) {
-            accumulated = match bound {
-                FaceBound::EdgeLoop(h) => {
-                    WalkState::<K>::fold(LoopState::new(h), mesh, accumulated, |acc, h| {
-                        f(acc, mesh.start(h))
-                    })
-                }
-                FaceBound::VertexLoop(v) => f(accumulated, v),
-            };
-            number += 1;
-        }
-        accumulated
+        WalkState::<K>::fold(self.0, mesh, init, |b, place| f(b, vertex_at(mesh, place)))
     }
 
     fn lives(&self, mesh: &K) -> bool {
-        mesh.face_at(self.face.index()) == Some(self.face)
-            && self.ring.as_ref().is_none_or(|ring| WalkState::<K>::lives(ring, mesh))
+        WalkState::<K>::lives(&self.0, mesh)
     }
 
     fn spend(&mut self, mesh: &K) -> bool {
-        self.ring.as_mut().is_none_or(|ring| WalkState::<K>::spend(ring, mesh))
+        WalkState::<K>::spend(&mut self.0, mesh)
     }
 }
 

@@ -32,6 +32,7 @@ mod uses;
 mod vertex;
 
 pub use boundary::BoundaryState;
+pub(crate) use face::FacePlaces;
 pub use face::{FaceBoundsState, FaceCornersState, LoopState};
 pub use rim::next_corner_around;
 pub use sector::{SectorHandlesState, SectorState};
