@@ -128,8 +128,9 @@ impl<S> Detached<S> {
     /// The next item, on the topology as it is now; `Ok(None)` from the end on.
     ///
     /// # Errors
-    /// [`WalkBroken`] when a cell the walk holds on to no longer lives, or the walk cannot return
-    /// to where it began. It is at its end then.
+    /// [`WalkBroken::Retired`] when a cell the walk holds on to no longer lives, and again for as
+    /// long as it does not. [`WalkBroken::Endless`] when the loop, sector or cycle it goes around
+    /// cannot be closed any more; the walk has left that one then.
     pub fn step<K: Topology + ?Sized>(&mut self, mesh: &K) -> Result<Option<S::Item>, WalkBroken>
     where
         S: WalkState<K>,
