@@ -83,7 +83,7 @@ impl<K: Topology, S: Scalar> Brep<K, S> {
         let mut used = self
             .topology
             .vertices()
-            .filter(|&v| self.topology.vertex_faces(v).next().is_some())
+            .filter(|&v| !self.topology.is_isolated(v))
             .map(|v| self.position(v));
         let first = used.next()?;
         Some(used.fold([first; 2], |[low, high], p| [low.inf(&p), high.sup(&p)]))

@@ -92,9 +92,7 @@ impl<K: Topology, S: Scalar> Brep<K, S> {
     /// The area of all faces, as a compensated sum. O(corners).
     #[must_use]
     pub fn area(&self) -> f64 {
-        let mut sum = Sum::default();
-        self.topology().faces().for_each(|face| sum.add(self.face_area(face)));
-        sum.value()
+        self.sum_over_faces(|face| self.face_area(face))
     }
 
     /// The volume that the faces enclose, positive where they face outward, as a compensated sum.
@@ -108,8 +106,12 @@ impl<K: Topology, S: Scalar> Brep<K, S> {
     pub fn signed_volume(&self) -> f64 {
         let Some([low, high]) = self.bounding_box() else { return 0.0 };
         let middle = nalgebra::center(&low, &high);
+        self.sum_over_faces(|face| self.cone(face, middle))
+    }
+
+    fn sum_over_faces(&self, term: impl Fn(K::Face) -> f64) -> f64 {
         let mut sum = Sum::default();
-        self.topology().faces().for_each(|face| sum.add(self.cone(face, middle)));
+        self.topology().faces().for_each(|face| sum.add(term(face)));
         sum.value()
     }
 

@@ -77,6 +77,12 @@ pub trait TopologyExt: Topology {
         self.oriented_edge_at(h.index()) == Some(h)
     }
 
+    /// Whether no face uses `v`. O(1).
+    #[inline]
+    fn is_isolated(&self, v: Self::Vertex) -> bool {
+        self.sector(v, 0).is_none() && self.vertex_loop(v, 0).is_none()
+    }
+
     /// The handles of a vertex's sectors, by number.
     #[inline]
     fn vertex_sectors(&self, v: Self::Vertex) -> walk!(Self, SectorHandlesState<Vertex>) {

@@ -81,7 +81,7 @@ impl<F: Id> Components<F> {
         let mut count = 0;
         mesh.vertices().for_each(|v| {
             let is_root = sets.parents()[v.index()] as usize == v.index();
-            if is_root && mesh.vertex_faces(v).next().is_some() {
+            if is_root && !mesh.is_isolated(v) {
                 count += 1;
             }
         });
