@@ -51,8 +51,11 @@ const LANES: usize = 8;
 /// divisions run in vector registers. The normals equal those of [`triangle_normals`] bit for bit;
 /// the sums differ from [`triangle_sums`] by rounding. O(F).
 ///
+/// Inlined, so that a caller who drops the sums does not pay for them.
+///
 /// # Panics
 /// When a triangle names a point that is not there.
+#[inline]
 pub fn triangle_normals_in_lanes(
     points: &[[f64; 3]],
     triangles: &[[u32; 3]],
