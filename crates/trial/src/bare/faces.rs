@@ -45,59 +45,45 @@ pub fn triangle_normals(points: &[[f64; 3]], triangles: &[[u32; 3]], normals: &m
 /// Triangles taken at once by [`triangle_normals_in_lanes`].
 const LANES: usize = 8;
 
-/// Unit normals of triangles and their area and signed volume, eight triangles at a time.
+/// Unit normals of triangles, eight triangles at a time.
 ///
 /// Coordinates are gathered into one array per axis, so that the arithmetic, square roots and
-/// divisions run in vector registers. The normals equal those of [`triangle_normals`] bit for bit;
-/// the sums differ from [`triangle_sums`] by rounding. O(F).
-///
-/// Inlined, so that a caller who drops the sums does not pay for them.
+/// divisions run in vector registers. The normals equal those of [`triangle_normals`] bit for bit.
+/// O(F).
 ///
 /// # Panics
 /// When a triangle names a point that is not there.
-#[inline]
 pub fn triangle_normals_in_lanes(
     points: &[[f64; 3]],
     triangles: &[[u32; 3]],
     normals: &mut Vec<[f64; 3]>,
-) -> Sums {
+) {
     if normals.len() != triangles.len() {
         normals.clear();
         normals.resize(triangles.len(), [0.0; 3]);
     }
-    let mut area = [0.0; LANES];
-    let mut volume = [0.0; LANES];
     let (blocks, rest) = triangles.as_chunks::<LANES>();
     let (normal_blocks, normal_rest) = normals.as_chunks_mut::<LANES>();
     for (block, normals) in blocks.iter().zip(normal_blocks) {
-        lanes(points, block, normals, &mut area, &mut volume);
+        lanes(points, block, normals);
     }
     if !rest.is_empty() {
         // The last block is filled up with triangles of no area.
         let mut block = [[rest[0][0]; 3]; LANES];
         block[..rest.len()].copy_from_slice(rest);
         let mut padded = [[0.0; 3]; LANES];
-        lanes(points, &block, &mut padded, &mut area, &mut volume);
+        lanes(points, &block, &mut padded);
         normal_rest.copy_from_slice(&padded[..rest.len()]);
     }
-    Sums { area: area.iter().sum::<f64>() / 2.0, volume: volume.iter().sum::<f64>() / 6.0 }
 }
 
 #[inline]
-fn lanes(
-    points: &[[f64; 3]],
-    triangles: &[[u32; 3]; LANES],
-    normals: &mut [[f64; 3]; LANES],
-    area: &mut [f64; LANES],
-    volume: &mut [f64; LANES],
-) {
-    let mut p = [[0.0; LANES]; 3];
+fn lanes(points: &[[f64; 3]], triangles: &[[u32; 3]; LANES], normals: &mut [[f64; 3]; LANES]) {
     let mut q = [[0.0; LANES]; 3];
     let mut r = [[0.0; LANES]; 3];
     for (lane, triangle) in triangles.iter().enumerate() {
         let corners = triangle.map(|v| points[v as usize]);
         for axis in 0..3 {
-            p[axis][lane] = corners[0][axis];
             q[axis][lane] = corners[1][axis] - corners[0][axis];
             r[axis][lane] = corners[2][axis] - corners[0][axis];
         }
@@ -112,20 +98,13 @@ fn lanes(
     for lane in 0..LANES {
         let square = n[0][lane] * n[0][lane] + n[1][lane] * n[1][lane] + n[2][lane] * n[2][lane];
         length[lane] = square.sqrt();
-        area[lane] += length[lane];
-        volume[lane] += n[0][lane] * p[0][lane] + n[1][lane] * p[1][lane] + n[2][lane] * p[2][lane];
     }
     for length in &mut length {
         // Dividing 0 by 1 instead of by 0 keeps the lanes free of branches.
         *length = if *length > 0.0 { *length } else { 1.0 };
     }
-    for axis in &mut n {
-        for (x, length) in axis.iter_mut().zip(&length) {
-            *x /= length;
-        }
-    }
     for (lane, normal) in normals.iter_mut().enumerate() {
-        *normal = [n[0][lane], n[1][lane], n[2][lane]];
+        *normal = [0, 1, 2].map(|axis: usize| n[axis][lane] / length[lane]);
     }
 }
 
@@ -211,15 +190,12 @@ mod tests {
         sphere.triangles.extend([[0, 0, 1], [5, 5, 5], [7, 8, 7]]);
         let (mut plain, mut lanes, mut loops) = (Vec::new(), Vec::new(), Vec::new());
         triangle_normals(&sphere.points, &sphere.triangles, &mut plain);
-        let sums = triangle_normals_in_lanes(&sphere.points, &sphere.triangles, &mut lanes);
+        triangle_normals_in_lanes(&sphere.points, &sphere.triangles, &mut lanes);
         let polygons = sphere.to_loops();
         loop_normals(&polygons.points, &polygons.corners, &polygons.face_ends, &mut loops);
         assert_eq!(plain, lanes);
         assert_eq!(plain, loops);
         assert_eq!(plain[320..], [[0.0; 3]; 3]);
-        let expected = triangle_sums(&sphere.points, &sphere.triangles);
-        assert!((sums.area - expected.area).abs() < 1e-12);
-        assert!((sums.volume - expected.volume).abs() < 1e-12);
     }
 
     #[test]
