@@ -3,11 +3,13 @@
 
 mod brep;
 mod measures;
+mod report;
 mod scalar;
 mod soup;
 mod sums;
 
 pub use brep::{Brep, BuildError, Mesh, NotATriangle, Polygons, TriangleMesh, Triangles};
+pub use report::{DefectCell, DefectKind, MeshDefect, MeshReport, ReportOptions};
 pub use scalar::Scalar;
 pub use soup::{
     AttributeColumn, AttributeValues, CleanSoup, CollapsedLoop, DuplicateFace, Note, NoteKind,

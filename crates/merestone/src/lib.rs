@@ -48,7 +48,7 @@ pub use merestone_topology as topology;
 
 /// What most programs need, in one line.
 pub mod prelude {
-    pub use merestone_geometry::{Brep, Mesh, Scalar, TriangleMesh};
+    pub use merestone_geometry::{Brep, Mesh, MeshReport, ReportOptions, Scalar, TriangleMesh};
     pub use merestone_kernels::{HalfEdge, TriangleAdjacency};
     pub use merestone_topology::floods::Survey;
     pub use merestone_topology::views::{Manifold, OrientedManifold, SolidBoundary};

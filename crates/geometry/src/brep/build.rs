@@ -2,6 +2,7 @@
 
 use super::Brep;
 use crate::scalar::Scalar;
+use crate::soup::CleanSoup;
 use merestone_topology::{Assemble, AssembleError, Column, FaceList, FaceListBuf, FaceListError};
 
 /// Points and faces that make no mesh.
@@ -101,6 +102,27 @@ impl<K: Assemble, S: Scalar> Brep<K, S> {
         }
         check_finite(points.values())?;
         Ok(Self { topology, points })
+    }
+}
+
+impl<K: Assemble> Brep<K, f64> {
+    /// The mesh of a cleaned soup; vertex i and face f are those of the soup.
+    ///
+    /// ```
+    /// use merestone_geometry::{PolygonSoup, TriangleMesh};
+    /// let points = vec![[0., 0., 0.], [3., 0., 0.], [0., 2., 0.]];
+    /// let mut soup = PolygonSoup { points, ..PolygonSoup::default() };
+    /// soup.faces.set_vertex_count(3);
+    /// soup.faces.push_face(&[0, 1, 2]);
+    /// let mesh = TriangleMesh::from_soup(&soup.clean()?)?;
+    /// assert_eq!(mesh.area(), 3.0);
+    /// # Ok::<(), Box<dyn std::error::Error>>(())
+    /// ```
+    ///
+    /// # Errors
+    /// [`BuildError::Assemble`] where the kernel cannot hold a face, or there are too many.
+    pub fn from_soup(soup: &CleanSoup) -> Result<Self, BuildError> {
+        Self::from_face_list(soup.points().to_vec(), soup.faces())
     }
 }
 

@@ -21,6 +21,8 @@ pub struct CleanSoup {
     face_sources: Option<Vec<u32>>,
     source_vertices: usize,
     collapsed_faces: Vec<u32>,
+    /// A corner of each, since its vertices may be gone afterwards.
+    collapsed_places: Vec<[f64; 3]>,
     collapsed_inner_loops: Vec<CollapsedLoop>,
     repeated_corners: usize,
 }
@@ -76,6 +78,7 @@ impl PolygonSoup {
             vertex_sources: None,
             face_sources: None,
             collapsed_faces: Vec::new(),
+            collapsed_places: Vec::new(),
             collapsed_inner_loops: Vec::new(),
             repeated_corners: 0,
         };
@@ -174,6 +177,8 @@ impl CleanSoup {
                 if !tidy(listed.corners, &mut corners) {
                     if bound == 0 {
                         self.collapsed_faces.push(face);
+                        let place = |&corner: &u32| self.soup.points[corner as usize];
+                        self.collapsed_places.push(listed.corners.first().map_or([0.0; 3], place));
                         break;
                     }
                     self.collapsed_inner_loops.push(CollapsedLoop { face, bound });
@@ -293,6 +298,12 @@ impl CleanSoup {
         &self.collapsed_faces
     }
 
+    /// Where the collapsed faces were: the first corner of each, in the same order.
+    #[must_use]
+    pub fn collapsed_places(&self) -> &[[f64; 3]] {
+        &self.collapsed_places
+    }
+
     /// How many faces collapsed, counting those without any corner, which have no number.
     #[must_use]
     pub fn collapsed_face_count(&self) -> usize {
@@ -352,6 +363,8 @@ mod tests {
         soup.empty_faces = 1;
         let clean = soup.clean().unwrap();
         assert_eq!(clean.collapsed_faces(), [0, 2, 3, 4, 6]);
+        assert_eq!(clean.collapsed_places().len(), 5);
+        assert_eq!(clean.collapsed_places()[3..], [[0., 0., 0.], [1., 1., 0.]]);
         assert_eq!(clean.collapsed_face_count(), 6);
         assert_eq!(clean.repeated_corners(), 1);
         // Vertices 1, 2, 5 and 6 are left.
