@@ -1,9 +1,12 @@
-//! Counts of real files, as far as points and loops alone tell them, against `facts.json`.
+//! Counts and measures of real files against `facts.json`: first what points and loops alone tell,
+//! then what the topology tells, on every kernel.
 //!
 //! The facts come from an independent script; `data/README.md` says what the files are and where
 //! they come from. The files in `data` are always read. `MERESTONE_DATA` may name a folder with
 //! more files and a `facts.json` of their own.
 #![forbid(unsafe_code)]
+
+mod topology;
 
 use merestone_exchange::{MeshFile, ReadError, Records, read_path};
 use merestone_geometry::{NoteKind, PLANAR_TOLERANCE};
@@ -55,10 +58,14 @@ fn beyond_the_facts(name: &str) -> Option<Result<(usize, usize), &'static str>> 
     }
 }
 
+fn facts(folder: &Path) -> BTreeMap<String, Value> {
+    let facts = std::fs::read_to_string(folder.join("facts.json")).expect("facts.json");
+    serde_json::from_str(&facts).expect("a JSON object")
+}
+
 /// Compares every file that facts are known of. Returns how many values were compared.
 fn compare_all(folder: &Path) -> usize {
-    let facts = std::fs::read_to_string(folder.join("facts.json")).expect("facts.json");
-    let facts: BTreeMap<String, Value> = serde_json::from_str(&facts).expect("a JSON object");
+    let facts = facts(folder);
     let mut compared = 0;
     for (name, fact) in &facts {
         let counted = counts(&folder.join(name));
