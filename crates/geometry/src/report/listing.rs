@@ -92,6 +92,7 @@ impl<'a, K: Topology> Listing<'a, K> {
         let how = match kind {
             DefectKind::BoundaryEdges => "has one use only".to_owned(),
             DefectKind::MisorientedEdges => "is used twice the same way".to_owned(),
+            _ if uses == 1 => "has one use only".to_owned(),
             _ => format!("has {uses} uses, {along} one way and {against} the other"),
         };
         let message = format!("the edge between vertices {a} and {b} {how}, {by}");
