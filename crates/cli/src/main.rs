@@ -2,6 +2,8 @@
 #![forbid(unsafe_code)]
 
 mod check;
+mod table;
+mod trial;
 
 use clap::{Parser, Subcommand};
 use std::process::ExitCode;
@@ -17,10 +19,12 @@ struct Cli {
 #[derive(Debug, Subcommand)]
 enum Command {
     Check(check::Check),
+    Trial(trial::Arguments),
 }
 
 fn main() -> ExitCode {
     match Cli::parse().command {
         Command::Check(arguments) => check::run(&arguments),
+        Command::Trial(arguments) => trial::run(&arguments),
     }
 }

@@ -62,7 +62,7 @@ fn skin(x: f64, up: f64) -> f64 {
 /// Distance of the passage's wall from the axis.
 fn bore(x: f64, up: f64) -> f64 {
     30.0 - 12.0 * hump(x / 18.0) * towards(-up).powi(2)
-        + 16.0 * hump(x / 50.0) * towards(up).powi(4)
+        + 16.0 * hump(x / 42.0) * towards(up).powi(4)
 }
 
 /// A smooth hump of height 1 over −1 to 1.
