@@ -44,7 +44,7 @@ impl fmt::Display for Table {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         let mut drawn = self.drawn.clone();
         for (column, align) in drawn.column_iter_mut().zip(&self.columns) {
-            column.set_padding((0, 3));
+            column.set_padding((0, 2));
             column.set_cell_alignment(match align {
                 Align::Left => CellAlignment::Left,
                 Align::Right => CellAlignment::Right,
