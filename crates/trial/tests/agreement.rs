@@ -140,6 +140,22 @@ fn faces_of_no_area_have_no_normal_anywhere() {
 }
 
 #[test]
+fn slivers_have_the_same_normal_on_all_kernels() {
+    // Corners on one line but for the rounding of tenths: which corner the arithmetic starts from
+    // decides the direction.
+    let points: Vec<[f64; 3]> = (0..30)
+        .map(|i| [0.1 * f64::from(i), 0.3 * f64::from(i) + 0.7, 0.7 * f64::from(i) - 0.1])
+        .collect();
+    let triangles: Vec<[u32; 3]> =
+        (0..10).flat_map(|i| [[i, i + 7, i + 18], [i + 3, i + 19, i + 1]]).collect();
+    let subject = Subject::from_triangles(points, &triangles).unwrap();
+    let mut bare = Work::FaceNormals.on_bare(&subject, Layout::Best).unwrap().unwrap();
+    let noisy = bare.values().numbers.as_chunks::<3>().0.iter().filter(|n| **n != [0.0; 3]).count();
+    assert!(noisy > 5, "rounding leaves a direction to {noisy} faces");
+    agrees(&subject);
+}
+
+#[test]
 fn reports_are_complete_and_add_up() {
     let subject = triangles(shapes::icosphere(2)).named("sphere", None);
     let mix = vec![(Work::Smooth, 20), (Work::Assemble, 3)];

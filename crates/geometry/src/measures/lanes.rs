@@ -10,20 +10,22 @@ const LANES: usize = 8;
 /// One number of each of the triangles taken at once.
 type Lanes = [f64; LANES];
 
-/// The unit normal of each triangle, zero where it has no area. Triangle `i` goes to `normals[i]`.
-pub(super) fn unit_normals<S: Scalar>(
+/// The unit normal of each triangle, zero where it has no area, from its corner number `FIRST` on.
+/// Triangle `i` goes to `normals[i]`.
+pub(super) fn unit_normals<const FIRST: usize, S: Scalar>(
     points: &[[S; 3]],
     triangles: &[[u32; 3]],
     normals: &mut [[f64; 3]],
 ) {
     let place = |v: u32| points[v as usize].map(Scalar::widen);
+    let turned = |t: &[u32; 3]| [t[FIRST % 3], t[(FIRST + 1) % 3], t[(FIRST + 2) % 3]];
     let (blocks, rest) = triangles.as_chunks::<LANES>();
     let (normal_blocks, normal_rest) = normals[..triangles.len()].as_chunks_mut::<LANES>();
     for (block, normals) in blocks.iter().zip(normal_blocks) {
         // From points to a register for each coordinate: the corner, and the way to the others.
         let (mut to_b, mut to_c) = ([[0.0; LANES]; 3], [[0.0; LANES]; 3]);
-        for (lane, &[a, b, c]) in block.iter().enumerate() {
-            let (a, b, c) = (place(a), place(b), place(c));
+        for (lane, triangle) in block.iter().enumerate() {
+            let [a, b, c] = turned(triangle).map(place);
             for axis in 0..3 {
                 to_b[axis][lane] = b[axis] - a[axis];
                 to_c[axis][lane] = c[axis] - a[axis];
@@ -47,8 +49,8 @@ pub(super) fn unit_normals<S: Scalar>(
             *normal = [x, y, z].map(|axis| axis[lane] / length[lane]);
         }
     }
-    for (&triangle, normal) in rest.iter().zip(normal_rest) {
-        let [a, b, c] = triangle.map(|v| Vector3::from(place(v)));
+    for (triangle, normal) in rest.iter().zip(normal_rest) {
+        let [a, b, c] = turned(triangle).map(|v| Vector3::from(place(v)));
         *normal = unit((b - a).cross(&(c - a))).into();
     }
 }
@@ -86,7 +88,7 @@ mod tests {
                 .map(|_| [0; 3].map(|_: u32| ((random() + 0.5) * f64::from(n)) as u32 % n))
                 .collect();
             let mut normals = vec![[9.0; 3]; count];
-            unit_normals(&points, &triangles, &mut normals);
+            unit_normals::<0, f64>(&points, &triangles, &mut normals);
             for (triangle, normal) in triangles.iter().zip(&normals) {
                 let [a, b, c] = triangle.map(|v| Vector3::from(points[v as usize]));
                 let alone = unit((b - a).cross(&(c - a)));

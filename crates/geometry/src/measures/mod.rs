@@ -77,10 +77,32 @@ impl<K: Topology, S: Scalar> Brep<K, S> {
             && mesh.face_count() == triangles.len()
             && normals.values().len() >= triangles.len()
         {
-            lanes::unit_normals(self.points().values(), triangles, normals.values_mut());
+            // From the loops' first corners, so that all kernels round alike: the normal of a sliver
+            // is made of little else than rounding.
+            let points = self.points().values();
+            let normals = normals.values_mut();
+            match self.first_corner(triangles) {
+                0 => lanes::unit_normals::<0, S>(points, triangles, normals),
+                1 => lanes::unit_normals::<1, S>(points, triangles, normals),
+                _ => lanes::unit_normals::<2, S>(points, triangles, normals),
+            }
             return;
         }
         mesh.faces().for_each(|face| normals[face] = self.face_normal(face).into());
+    }
+
+    /// Where in its three the first face with three different corners has its loop's first corner;
+    /// kernels keep all threes alike.
+    fn first_corner(&self, triangles: &[[u32; 3]]) -> usize {
+        let mesh = self.topology();
+        let place = |face: K::Face| {
+            let [a, b, c] = triangles[face.index()];
+            let Some(FaceBound::EdgeLoop(h)) = mesh.bound(face, 0) else { return None };
+            let first = mesh.start(h).index();
+            let place = [a, b, c].iter().position(|&v| v as usize == first);
+            place.filter(|_| a != b && b != c && c != a)
+        };
+        mesh.faces().find_map(place).unwrap_or(0)
     }
 
     /// The area of a face: half the length of its Newell vector. O(corners).
