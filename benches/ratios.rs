@@ -6,6 +6,8 @@
 //! and to the best. Arguments that are names of works choose among them; `SECONDS` in the
 //! environment is the time for each row (default 1).
 
+#![expect(clippy::print_stdout, reason = "a bench talks to the person who runs it")]
+
 mod meshes;
 
 use merestone_trial::Subject;

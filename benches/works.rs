@@ -9,6 +9,8 @@
 //! Criterion measures one after the other; for ratios on a machine that does other work, too, run
 //! `cargo bench -p merestone-benches --bench ratios`.
 
+#![expect(clippy::print_stderr, reason = "a bench talks to the person who runs it")]
+
 mod meshes;
 
 use criterion::{Criterion, Throughput, criterion_group, criterion_main};

@@ -20,7 +20,7 @@ use std::process::ExitCode;
 /// or these words are unusable.
 #[derive(Args, Debug)]
 pub(crate) struct Arguments {
-    /// The mesh file, or - for standard input (with --format)
+    /// The mesh file, PLY or STL; - is standard input
     #[arg(required_unless_present = "demo", conflicts_with = "demo")]
     file: Option<PathBuf>,
 
@@ -72,8 +72,6 @@ enum Failure {
     Read(#[from] ReadError),
     #[error("standard input cannot be read: {0}")]
     Input(#[source] std::io::Error),
-    #[error("standard input has no name that tells its format: add --format ply or --format stl")]
-    InputFormat,
     #[error("{file}: {problem}")]
     Soup {
         file: String,
@@ -211,10 +209,9 @@ fn read(arguments: &Arguments) -> Result<Subject, Failure> {
     // Required by the command line unless there is a demonstration.
     let path = arguments.file.as_deref().unwrap_or(Path::new("-"));
     let mesh = if path == Path::new("-") {
-        let format = format.ok_or(Failure::InputFormat)?;
         let mut bytes = Vec::new();
         std::io::stdin().lock().read_to_end(&mut bytes).map_err(Failure::Input)?;
-        read_bytes(&bytes, Some(format), records, "standard input")?
+        read_bytes(&bytes, format, records, "standard input")?
     } else {
         read_path(path, format, records)?
     };

@@ -142,7 +142,7 @@ fn files_are_tried_and_named() {
 
 #[test]
 fn polygons_from_standard_input_leave_the_triangle_kernel_out() {
-    let words = ["trial", "-", "--format", "ply", "--json", "--seconds", "0.001"];
+    let words = ["trial", "-", "--json", "--seconds", "0.001"];
     let output = merestone_fed(&words, CUBE.as_bytes());
     assert_eq!(output.status.code(), Some(0), "{}", String::from_utf8_lossy(&output.stderr));
     let report = json(&output);
@@ -210,7 +210,7 @@ fn unusable_input_is_refused_by_name() {
         (&["no-such-file.stl"], "no-such-file.stl"),
         (&[&empty], "empty"),
         (&[&no_faces], "no faces"),
-        (&["-"], "add --format"),
+        (&["-"], "standard input: the file is empty"),
         (&["-", "--format", "docx"], "ply and stl"),
         (&["x.stl", "--weld", "0.001"], "not built yet"),
         (&["x.stl", "--weld", "glue"], "none and exact"),
