@@ -7,9 +7,6 @@ use nalgebra::Vector3;
 /// Triangles taken at once: two or four vector registers of each coordinate.
 const LANES: usize = 8;
 
-/// One number of each of the triangles taken at once.
-type Lanes = [f64; LANES];
-
 /// The unit normal of each triangle, zero where it has no area, from its corner number `FIRST` on.
 /// Triangle `i` goes to `normals[i]`.
 pub(super) fn unit_normals<const FIRST: usize, S: Scalar>(
@@ -17,49 +14,65 @@ pub(super) fn unit_normals<const FIRST: usize, S: Scalar>(
     triangles: &[[u32; 3]],
     normals: &mut [[f64; 3]],
 ) {
-    let place = |v: u32| points[v as usize].map(Scalar::widen);
-    let turned = |t: &[u32; 3]| [t[FIRST % 3], t[(FIRST + 1) % 3], t[(FIRST + 2) % 3]];
+    let alone = |triangle: &[u32; 3]| {
+        let [a, b, c] = corners::<FIRST, S>(points, triangle).map(Vector3::from);
+        unit((b - a).cross(&(c - a))).into()
+    };
     let (blocks, rest) = triangles.as_chunks::<LANES>();
     let (normal_blocks, normal_rest) = normals[..triangles.len()].as_chunks_mut::<LANES>();
     for (block, normals) in blocks.iter().zip(normal_blocks) {
-        // From points to a register for each coordinate: the corner, and the way to the others.
-        let (mut to_b, mut to_c) = ([[0.0; LANES]; 3], [[0.0; LANES]; 3]);
-        for (lane, triangle) in block.iter().enumerate() {
-            let [a, b, c] = turned(triangle).map(place);
-            for axis in 0..3 {
-                to_b[axis][lane] = b[axis] - a[axis];
-                to_c[axis][lane] = c[axis] - a[axis];
-            }
-        }
-        let [x, y, z] = cross(&to_b, &to_c);
-        let mut squared: Lanes = [0.0; LANES];
-        let mut far = false;
-        for lane in 0..LANES {
-            squared[lane] = x[lane] * x[lane] + y[lane] * y[lane] + z[lane] * z[lane];
-            far |= !(squared[lane] > f64::MIN_POSITIVE && squared[lane] < f64::MAX);
-        }
-        if far {
-            for (lane, normal) in normals.iter_mut().enumerate() {
-                *normal = unit(Vector3::new(x[lane], y[lane], z[lane])).into();
-            }
-            continue;
-        }
-        let length = squared.map(f64::sqrt);
-        for (lane, normal) in normals.iter_mut().enumerate() {
-            *normal = [x, y, z].map(|axis| axis[lane] / length[lane]);
+        if !block_normals::<FIRST, S>(points, block, normals) {
+            block.iter().zip(normals).for_each(|(t, normal)| *normal = alone(t));
         }
     }
-    for (triangle, normal) in rest.iter().zip(normal_rest) {
-        let [a, b, c] = turned(triangle).map(|v| Vector3::from(place(v)));
-        *normal = unit((b - a).cross(&(c - a))).into();
-    }
+    rest.iter().zip(normal_rest).for_each(|(t, normal)| *normal = alone(t));
 }
 
+/// The unit normals of one block; `false`, with normals that do not count, where one of the
+/// squared lengths vanishes or overflows.
+///
+/// A function of its own, from points to normals: unrolled into its caller it is not vectorised,
+/// and taken apart it hands single numbers over where the other half wants vectors.
+#[inline(never)]
+fn block_normals<const FIRST: usize, S: Scalar>(
+    points: &[[S; 3]],
+    triangles: &[[u32; 3]; LANES],
+    normals: &mut [[f64; 3]; LANES],
+) -> bool {
+    // A register for each coordinate of the ways from the first corner to the others.
+    let (mut to_b, mut to_c) = ([[0.0; LANES]; 3], [[0.0; LANES]; 3]);
+    for (lane, triangle) in triangles.iter().enumerate() {
+        let [a, b, c] = corners::<FIRST, S>(points, triangle);
+        for axis in 0..3 {
+            to_b[axis][lane] = b[axis] - a[axis];
+            to_c[axis][lane] = c[axis] - a[axis];
+        }
+    }
+    let mut n = [[0.0; LANES]; 3];
+    for lane in 0..LANES {
+        n[0][lane] = to_b[1][lane] * to_c[2][lane] - to_b[2][lane] * to_c[1][lane];
+        n[1][lane] = to_b[2][lane] * to_c[0][lane] - to_b[0][lane] * to_c[2][lane];
+        n[2][lane] = to_b[0][lane] * to_c[1][lane] - to_b[1][lane] * to_c[0][lane];
+    }
+    let mut squared = [0.0; LANES];
+    for lane in 0..LANES {
+        squared[lane] = n[0][lane] * n[0][lane] + n[1][lane] * n[1][lane] + n[2][lane] * n[2][lane];
+    }
+    // Not `all`: it would stop at the first, and so take one branch a lane.
+    let near = |square: &f64| (*square > f64::MIN_POSITIVE) & (*square < f64::MAX);
+    let all_near = squared.iter().fold(true, |all, square| all & near(square));
+    let length = squared.map(f64::sqrt);
+    for (lane, normal) in normals.iter_mut().enumerate() {
+        *normal = [0, 1, 2].map(|axis: usize| n[axis][lane] / length[lane]);
+    }
+    all_near
+}
+
+/// The corners of a triangle, from its corner number `FIRST` on.
 #[inline(always)]
-fn cross(u: &[Lanes; 3], v: &[Lanes; 3]) -> [Lanes; 3] {
-    [[1, 2], [2, 0], [0, 1]].map(|[j, k]: [usize; 2]| {
-        std::array::from_fn(|lane| u[j][lane] * v[k][lane] - u[k][lane] * v[j][lane])
-    })
+fn corners<const FIRST: usize, S: Scalar>(points: &[[S; 3]], triangle: &[u32; 3]) -> [[f64; 3]; 3] {
+    let place = |i: usize| points[triangle[(FIRST + i) % 3] as usize].map(Scalar::widen);
+    [place(0), place(1), place(2)]
 }
 
 #[cfg(test)]
