@@ -2,7 +2,6 @@
 
 use super::UnionFind;
 use crate::{Column, Id, Topology, TopologyExt};
-use smallvec::SmallVec;
 
 /// The label of a face not reached yet.
 const NONE: u32 = u32::MAX;
@@ -100,8 +99,8 @@ fn is_coherent<K: Topology>(mesh: &K) -> bool {
             balance += if is_near { 1 } else { -1 };
         }
     }
-    // A small mesh lies in the nearest cache whatever its order.
-    balance >= 0 && bound > 1 << 15
+    // A smaller mesh lies in a near cache whatever its order.
+    balance >= 0 && bound > 1 << 17
 }
 
 fn by_union<K: Topology>(mesh: &K, labels: &mut Vec<u32>) -> usize {
@@ -109,16 +108,20 @@ fn by_union<K: Topology>(mesh: &K, labels: &mut Vec<u32>) -> usize {
     let mut all_plain = true;
     mesh.faces().for_each(|face| {
         let number = face.index() as u32;
-        // A face above is joined when its turn comes: until then the face stands in for it.
-        let mut below = |h| {
+        let mut across = |h| {
             all_plain &= mesh.is_plain(h);
-            (mesh.across(h).index() as u32).min(number)
+            mesh.across(h).index() as u32
         };
+        // A face above is joined when its turn comes.
         if let Some(corners) = mesh.triangle(face) {
-            sets.join_below(number, &corners.map(below));
+            sets.join_below(number, corners.map(|h| across(h).min(number)));
         } else {
-            let faces: SmallVec<[u32; 8]> = mesh.face_corners(face).map(&mut below).collect();
-            sets.join_below(number, &faces);
+            mesh.face_corners(face).for_each(|h| {
+                let other = across(h);
+                if other < number {
+                    sets.union(number, other);
+                }
+            });
         }
     });
     if !all_plain {

@@ -59,15 +59,17 @@ impl UnionFind {
 
     /// Joins `a`, which nothing was joined to yet, with `others`, none of which is above it.
     #[inline(always)]
-    pub(crate) fn join_below(&mut self, a: u32, others: &[u32]) {
-        let parents = &mut self.parents[..];
-        let least = others.iter().fold(a, |least, &other| least.min(parents[other as usize]));
+    pub(crate) fn join_below<const N: usize>(&mut self, a: u32, others: [u32; N]) {
+        let parents = others.map(|other| self.parents[other as usize]);
+        let least = parents.iter().fold(a, |least, &parent| least.min(parent));
+        self.parents[a as usize] = least;
         // One branch for all: where sets are large already, it is hardly ever taken.
-        let apart =
-            others.iter().fold(false, |b, &o| b | ((parents[o as usize] != least) & (o != a)));
-        parents[a as usize] = least;
+        let apart = parents
+            .iter()
+            .zip(&others)
+            .fold(false, |apart, (&parent, &other)| apart | ((parent != least) & (other != a)));
         if apart {
-            for &other in others {
+            for other in others {
                 self.union(a, other);
             }
         }
