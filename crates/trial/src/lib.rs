@@ -2,7 +2,7 @@
 //!
 //! [`run`] is the whole of it: the [`works`] on each of the [`kernels`] and on [`bare`] arrays,
 //! [measured](measure) turn and turn about, compared [value by value](values), and a
-//! [verdict](verdict) for the mix of works that the caller's program does. [`bare`] is the
+//! [verdict] for the mix of works that the caller's program does. [`bare`] is the
 //! yardstick: hand-written arrays, one purpose each. [`shapes`] makes meshes to measure on,
 //! [`foundry`] the parts that demonstrations show.
 //!
