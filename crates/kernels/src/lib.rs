@@ -21,12 +21,17 @@
 mod cells;
 mod half_edge;
 mod memory;
+mod moves;
 mod pairing;
+mod removal;
 mod sectors;
 mod side;
 mod slots;
 mod triangle;
 mod vertex_table;
+
+/// Set in an entry or link that says more than a number.
+const TOP: u32 = 1 << 31;
 
 pub use cells::{Cells, DenseId};
 pub use half_edge::{Full, HalfEdge, Links};

@@ -1,7 +1,5 @@
 //! Which slots of a kind of cell live.
 
-use merestone_topology::{Correspondence, Id};
-
 /// The slots `0..bound` of one kind of cell, and which of them were retired.
 ///
 /// A topology that never lost a cell holds nothing on the heap here: the bit set comes with the
@@ -78,18 +76,6 @@ impl Slots {
         words[index as usize / 64] |= 1 << (index % 64);
         self.retired -= 1;
         true
-    }
-
-    /// Where each slot goes when the retired ones are dropped and the others keep their order.
-    pub(crate) fn moves<I: Id>(&self, id: impl Fn(u32) -> I) -> Correspondence<I, I> {
-        let mut new = 0;
-        let targets = (0..self.bound).map(|index| {
-            self.is_live(index).then(|| {
-                new += 1;
-                id(new - 1)
-            })
-        });
-        Correspondence::new(targets.collect(), self.count())
     }
 
     /// The bits of the live slots, 64 a word; `None` while all live.

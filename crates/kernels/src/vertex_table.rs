@@ -1,36 +1,73 @@
-//! The sectors of every vertex: one entry a vertex, and a side table for the few that need more.
+//! The sectors and vertex loops of every vertex: one entry a vertex, and a side table for the few
+//! that need more.
 
+use crate::TOP;
 use crate::memory::vec_bytes;
+use crate::moves::Moves;
 use crate::side::SideTable;
 use crate::slots::Slots;
 use merestone_topology::OrientedEdgeId;
 
-/// The entry of a vertex without a corner.
-const NONE: u32 = u32::MAX >> 1;
-/// Marks an entry that is an index into the side table.
-const LISTED: u32 = 1 << 31;
+/// The entry of a vertex without corners and vertex loops.
+pub(crate) const NONE: u32 = u32::MAX;
+/// The entry, while assembling, of a vertex whose sectors are still to be found.
+pub(crate) const LATER: u32 = u32::MAX - 1;
 
-/// For each vertex the handles of its sectors.
+/// For each vertex the handles of its sectors and the faces of its vertex loops.
 ///
 /// The entry of a vertex with one sector is that sector's handle, so that a manifold mesh pays
-/// four bytes a vertex and one test.
-#[derive(Clone, Debug)]
+/// four bytes a vertex and one test. All other entries have the top bit set.
+#[derive(Clone, Debug, Default)]
 pub(crate) struct VertexTable {
+    /// A handle, [`NONE`], or the top bit and the index of a list.
     entries: Vec<u32>,
-    listed: SideTable,
+    /// How many sectors, their handles, and the faces of the vertex loops, ascending.
+    lists: SideTable,
+}
+
+/// The vertex loops at `vertex` among (vertex, face), ascending.
+pub(crate) fn faces_at(vertex_loops: &[(u32, u32)], vertex: u32) -> &[(u32, u32)] {
+    let begin = vertex_loops.partition_point(|&(at, _)| at < vertex);
+    let count = vertex_loops[begin..].partition_point(|&(at, _)| at == vertex);
+    &vertex_loops[begin..begin + count]
 }
 
 impl VertexTable {
-    /// `count` vertices without a corner.
-    pub(crate) fn isolated(count: usize) -> Self {
-        Self { entries: vec![NONE; count], listed: SideTable::with_capacity(0) }
+    /// A table of entries that are handles or [`NONE`].
+    pub(crate) fn all_simple(entries: Vec<u32>) -> Self {
+        Self { entries, lists: SideTable::with_capacity(0) }
+    }
+
+    /// A table of these entries, those with the top bit made by [`push`](Self::push).
+    pub(crate) fn new(entries: Vec<u32>, lists: SideTable) -> Self {
+        Self { entries, lists }
+    }
+
+    /// The entry of a vertex that needs no list.
+    pub(crate) fn entry(handles: &[OrientedEdgeId], vertex_loops: usize) -> Option<u32> {
+        match (handles, vertex_loops) {
+            ([], 0) => Some(NONE),
+            ([only], 0) => Some(only.to_u32()),
+            _ => None,
+        }
+    }
+
+    /// Adds a vertex's list to `lists` and returns the vertex's entry.
+    pub(crate) fn push(
+        lists: &mut SideTable,
+        vertex: u32,
+        handles: &[OrientedEdgeId],
+        faces: impl ExactSizeIterator<Item = u32>,
+    ) -> u32 {
+        let handles = handles.iter().map(|handle| handle.to_u32());
+        lists.push(vertex, list(handles, faces)) | TOP
     }
 
     /// The handle of sector number `i` of `vertex`.
     #[inline(always)]
     pub(crate) fn handle(&self, vertex: u32, i: usize) -> Option<u32> {
         let entry = self.entries[vertex as usize];
-        if entry < NONE {
+        if entry < TOP {
             return if i == 0 { Some(entry) } else { None };
         }
         self.listed_handle(entry, i)
@@ -38,61 +75,70 @@ impl VertexTable {
 
     #[cold]
     fn listed_handle(&self, entry: u32, i: usize) -> Option<u32> {
-        if entry == NONE { None } else { self.listed.get(entry & !LISTED).get(i).copied() }
+        self.listed(entry).0.get(i).copied()
     }
 
-    /// Gives `vertex` one sector; only for a vertex that is not listed.
-    #[inline(always)]
-    pub(crate) fn set_one(&mut self, vertex: u32, handle: u32) {
-        self.entries[vertex as usize] = handle;
-    }
-
-    /// Gives `vertex` these sectors in place of those it had.
-    pub(crate) fn set(&mut self, vertex: u32, handles: &[OrientedEdgeId]) {
+    /// The faces of the vertex loops at `vertex`, ascending.
+    #[inline]
+    pub(crate) fn faces(&self, vertex: u32) -> &[u32] {
         let entry = self.entries[vertex as usize];
-        let listed = (entry >= LISTED).then_some(entry & !LISTED);
-        self.entries[vertex as usize] = match (handles, listed) {
-            ([_, _, ..], Some(index)) => {
-                self.listed.replace(index, numbers(handles));
+        if entry < TOP { &[] } else { self.listed(entry).1 }
+    }
+
+    /// The handles and faces listed under an entry that is no handle.
+    fn listed(&self, entry: u32) -> (&[u32], &[u32]) {
+        if entry == NONE {
+            return (&[], &[]);
+        }
+        let list = self.lists.get(entry & !TOP);
+        list[1..].split_at(list[0] as usize)
+    }
+
+    /// Gives `vertex` these sectors and vertex loops in place of those it had.
+    pub(crate) fn set(&mut self, vertex: u32, handles: &[OrientedEdgeId], faces: &[u32]) {
+        let old = self.entries[vertex as usize];
+        let was_listed = old >= TOP && old != NONE;
+        let numbers = handles.iter().map(|handle| handle.to_u32());
+        let entry = match Self::entry(handles, faces.len()) {
+            None if was_listed => {
+                self.lists.replace(old & !TOP, list(numbers, faces.iter().copied()));
                 return;
             }
-            ([_, _, ..], None) => LISTED | self.listed.push(vertex, numbers(handles)),
-            (few, listed) => {
-                if let Some(index) = listed
-                    && let Some(moved) = self.listed.remove(index)
-                {
-                    self.entries[moved as usize] = LISTED | index;
+            None => self.lists.push(vertex, list(numbers, faces.iter().copied())) | TOP,
+            Some(simple) => {
+                if was_listed && let Some(moved) = self.lists.remove(old & !TOP) {
+                    self.entries[moved as usize] = old;
                 }
-                few.first().map_or(NONE, |h| h.to_u32())
+                simple
             }
         };
+        self.entries[vertex as usize] = entry;
     }
 
-    /// Drops the entries of retired vertices; `moved` gives each handle's new number, `new_vertex`
-    /// each live vertex's.
+    /// Drops the entries of retired vertices; the closures give each handle's new number and each
+    /// face's.
     pub(crate) fn compact(
         &mut self,
-        slots: &Slots,
-        new_vertex: impl Fn(u32) -> u32,
-        moved: impl Fn(u32) -> u32,
+        live: &Slots,
+        handle: impl Fn(u32) -> u32,
+        face: impl Fn(u32) -> u32,
     ) {
-        let mut listed = SideTable::with_capacity(self.listed.len());
-        let mut entries = Vec::with_capacity(slots.count());
-        for (vertex, &entry) in self.entries.iter().enumerate() {
-            let vertex = vertex as u32;
-            if slots.is_live(vertex) {
-                entries.push(match entry {
-                    NONE => NONE,
-                    entry if entry < NONE => moved(entry),
-                    entry => {
-                        let handles = self.listed.get(entry & !LISTED);
-                        let moved = handles.iter().map(|&handle| moved(handle));
-                        LISTED | listed.push(new_vertex(vertex), (handles.len(), moved))
-                    }
-                });
+        let mut lists = SideTable::with_capacity(self.lists.len());
+        let mut owner = 0;
+        let entries = Moves::squeeze(&self.entries, live, |entry| {
+            owner += 1;
+            match entry {
+                NONE => NONE,
+                entry if entry < TOP => handle(entry),
+                entry => {
+                    let (handles, faces) = self.listed(entry);
+                    let handles = handles.iter().map(|&h| handle(h));
+                    let faces = faces.iter().map(|&f| face(f));
+                    lists.push(owner - 1, list(handles, faces)) | TOP
+                }
             }
-        }
-        (self.entries, self.listed) = (entries, listed);
+        });
+        (self.entries, self.lists) = (entries, lists);
     }
 
     /// The heap bytes of the entries.
@@ -101,11 +147,16 @@ impl VertexTable {
     }
 
     /// The heap bytes of the side table.
-    pub(crate) fn listed_bytes(&self) -> usize {
-        self.listed.bytes()
+    pub(crate) fn list_bytes(&self) -> usize {
+        self.lists.bytes()
     }
 }
 
-fn numbers(handles: &[OrientedEdgeId]) -> (usize, impl Iterator<Item = u32>) {
-    (handles.len(), handles.iter().map(|h| h.to_u32()))
+/// A vertex's list: the number of sectors, their handles, the faces of the vertex loops.
+fn list(
+    handles: impl ExactSizeIterator<Item = u32>,
+    faces: impl ExactSizeIterator<Item = u32>,
+) -> (usize, impl Iterator<Item = u32>) {
+    let count = handles.len();
+    (1 + count + faces.len(), std::iter::once(count as u32).chain(handles).chain(faces))
 }

@@ -1,47 +1,11 @@
 //! Compacting.
 
-use super::vertices::vertex_list;
-use super::{Full, HalfEdge, NONE, TOP};
-use crate::cells::DenseId;
+use super::{Full, HalfEdge};
+use crate::TOP;
+use crate::moves::Moves;
 use crate::side::SideTable;
 use crate::slots::Slots;
-use merestone_topology::{Compaction, Correspondence, EdgeId, FaceId, OrientedEdgeId, VertexId};
-
-/// Where each slot goes; meaningless for retired ones.
-struct Moves {
-    to: Vec<u32>,
-}
-
-impl Moves {
-    fn new(slots: &Slots) -> Self {
-        let mut next = 0;
-        let mut to = Vec::with_capacity(slots.bound());
-        to.extend((0..slots.bound() as u32).map(|index| {
-            let here = next;
-            next += u32::from(slots.is_live(index));
-            here
-        }));
-        Self { to }
-    }
-
-    /// A link after the move, its top bit kept.
-    fn link(&self, link: u32) -> u32 {
-        self.to[(link & !TOP) as usize] | link & TOP
-    }
-
-    /// The entries of the live slots, each changed by `change`, in an array of exactly their size.
-    fn squeeze(entries: &[u32], slots: &Slots, mut change: impl FnMut(u32) -> u32) -> Vec<u32> {
-        let mut squeezed = Vec::with_capacity(slots.count());
-        let live = (0..).zip(entries).filter(|&(index, _)| slots.is_live(index));
-        squeezed.extend(live.map(|(_, &entry)| change(entry)));
-        squeezed
-    }
-
-    fn correspondence<I: DenseId>(self, slots: &Slots) -> Correspondence<I, I> {
-        let target = |(index, to)| slots.is_live(index).then(|| I::from_index(to));
-        Correspondence::new((0..).zip(self.to).map(target).collect(), slots.count())
-    }
-}
+use merestone_topology::{Compaction, EdgeId, FaceId, OrientedEdgeId, VertexId};
 
 impl HalfEdge<Full> {
     pub(super) fn compact_all(&mut self) -> Compaction<VertexId, EdgeId, FaceId, OrientedEdgeId> {
@@ -75,23 +39,7 @@ impl HalfEdge<Full> {
         });
         self.face_bounds = bounds;
 
-        let mut lists = SideTable::with_capacity(self.vertex_uses.len());
-        let mut owner = 0;
-        self.vertex = Moves::squeeze(&self.vertex, &self.vertices, |entry| {
-            owner += 1;
-            if entry < TOP {
-                return uses.link(entry);
-            }
-            if entry == NONE {
-                return NONE;
-            }
-            let (handles, loops) = self.uses_aside(entry);
-            let handles: Vec<_> =
-                handles.iter().map(|&h| OrientedEdgeId::from_u32(uses.link(h))).collect();
-            let list = vertex_list(&handles, loops.iter().map(|&f| faces.link(f)));
-            lists.push(owner - 1, list) | TOP
-        });
-        self.vertex_uses = lists;
+        self.sectors.compact(&self.vertices, |h| uses.link(h), |f| faces.link(f));
 
         let moved = Compaction {
             vertices: vertices.correspondence(&self.vertices),

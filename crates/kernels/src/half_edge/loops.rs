@@ -1,9 +1,11 @@
 //! The loops of a face list, laid out as links.
 
-use super::{Full, HalfEdge, TOP};
+use super::{Full, HalfEdge};
+use crate::TOP;
 use crate::memory::Peak;
 use crate::side::SideTable;
-use merestone_topology::FaceList;
+use merestone_topology::{EdgeUse, FaceList, ListedLoop};
+use std::borrow::Cow;
 
 /// What a face list holds beyond one edge loop a face.
 #[derive(Clone, Copy, Debug)]
@@ -42,129 +44,133 @@ impl Survey {
     }
 }
 
-/// A way to step in the loops: by arithmetic or by links.
-pub(super) trait Loops {
-    fn next(&self, h: u32) -> u32;
-    fn prev(&self, h: u32) -> u32;
-}
-
-/// Every `K` oriented edges are a loop.
-pub(super) struct Every<const K: u32>;
-
-impl<const K: u32> Loops for Every<K> {
-    #[inline(always)]
-    fn next(&self, h: u32) -> u32 {
-        if h % K == K - 1 { h + 1 - K } else { h + 1 }
-    }
-
-    #[inline(always)]
-    fn prev(&self, h: u32) -> u32 {
-        if h.is_multiple_of(K) { h + K - 1 } else { h - 1 }
-    }
-}
-
-/// Loops as the links say.
-pub(super) struct Linked<'a> {
-    pub(super) next: &'a [u32],
-    pub(super) prev: &'a [u32],
-}
-
-impl Loops for Linked<'_> {
-    #[inline(always)]
-    fn next(&self, h: u32) -> u32 {
-        self.next[h as usize]
-    }
-
-    #[inline(always)]
-    fn prev(&self, h: u32) -> u32 {
-        self.prev[h as usize]
-    }
-}
-
-/// Fills `next`, `prev`, `start`, `face` and the face entries.
-pub(super) fn lay_out(
-    mesh: &mut HalfEdge<Full>,
+/// The vertex loops of a list as (vertex, face), ascending.
+pub(super) fn listed_vertex_loops(
     list: &FaceList<'_>,
-    survey: &Survey,
+    count: usize,
     peak: &mut Peak,
-) {
-    let count = list.corner_count() - survey.vertex_loops;
-    mesh.in_threes = survey.corners_each == Some(3);
-    mesh.inner_loops = survey.inner_loops;
-    match survey.corners_each {
-        Some(3) => return lay_out_alike::<3>(mesh, list, peak),
-        Some(4) => return lay_out_alike::<4>(mesh, list, peak),
-        _ => {}
-    }
-    let links = &mut mesh.links;
-    links.next = peak.held(Vec::with_capacity(count));
-    links.prev = peak.held(Vec::with_capacity(count));
-    links.face = peak.held(Vec::with_capacity(count));
-    links.start = peak.held(Vec::with_capacity(count));
-    mesh.face = peak.held(Vec::with_capacity(list.face_count()));
-    mesh.face_bounds = SideTable::with_capacity(survey.faces_aside);
-    for face in 0..list.face_count() {
-        let mut loops = list.loops(face);
-        let aside = loops.len() != 1;
-        let first = links.next.len() as u32;
-        let entry = match loops.next() {
-            Some(listed) if !aside && !listed.is_vertex_loop => {
-                push_loop(links, listed.corners, face as u32);
-                first
-            }
-            _ => {
-                let loops = list.loops(face);
-                let how_many = loops.len();
-                let bounds = loops.map(|listed| {
-                    if listed.is_vertex_loop {
-                        return listed.corners[0] | TOP;
-                    }
-                    push_loop(links, listed.corners, face as u32)
-                });
-                mesh.face_bounds.push(face as u32, (how_many, bounds)) | TOP
-            }
-        };
-        mesh.face.push(entry);
-    }
-    peak.hold(mesh.face_bounds.bytes());
-}
-
-/// The same where every face is one loop of `K` corners.
-fn lay_out_alike<const K: usize>(mesh: &mut HalfEdge<Full>, list: &FaceList<'_>, peak: &mut Peak) {
-    let count = list.corner_count();
-    let links = &mut mesh.links;
-    links.start = peak.held(list.corners().to_vec());
-    links.next = peak.held(vec![0; count]);
-    links.prev = peak.held(vec![0; count]);
-    links.face = peak.held(vec![0; count]);
-    mesh.face = peak.held(vec![0; count / K]);
-    let faces = (links.next.as_chunks_mut::<K>().0.iter_mut())
-        .zip(links.prev.as_chunks_mut::<K>().0)
-        .zip(links.face.as_chunks_mut::<K>().0)
-        .zip(&mut mesh.face);
-    let (mut number, mut first) = (0, 0);
-    for (((next, prev), face), entry) in faces {
-        for i in 0..K {
-            next[i] = first + ((i + 1) % K) as u32;
-            prev[i] = first + ((i + K - 1) % K) as u32;
-            face[i] = number;
+) -> Vec<(u32, u32)> {
+    let mut found = peak.held(Vec::with_capacity(count));
+    if count > 0 {
+        for face in 0..list.face_count() {
+            let bare = list.loops(face).filter(|listed| listed.is_vertex_loop);
+            found.extend(bare.map(|listed| (listed.corners[0], face as u32)));
         }
-        *entry = first;
-        number += 1;
-        first += K as u32;
+        found.sort_unstable();
+    }
+    found
+}
+
+fn edge_loops<'a>(list: &FaceList<'a>) -> impl Iterator<Item = ListedLoop<'a>> {
+    let all = (0..list.loop_count()).filter_map(|number| list.listed_loop(number));
+    all.filter(|listed| !listed.is_vertex_loop)
+}
+
+/// The edge uses of the `count` corners that are oriented edges: those of vertex loops are left
+/// out.
+pub(super) fn oriented_uses<'a>(
+    list: &FaceList<'a>,
+    uses: &'a [EdgeUse],
+    count: usize,
+    peak: &mut Peak,
+) -> Cow<'a, [EdgeUse]> {
+    if count == uses.len() {
+        return Cow::Borrowed(uses);
+    }
+    let mut oriented = peak.held(Vec::with_capacity(count));
+    for listed in edge_loops(list) {
+        oriented.extend_from_slice(&uses[listed.first_corner..][..listed.corners.len()]);
+    }
+    Cow::Owned(oriented)
+}
+
+/// The corner of oriented edge `h` in the list.
+pub(super) fn corner_of(list: &FaceList<'_>, h: usize) -> usize {
+    let mut before = 0;
+    for listed in edge_loops(list) {
+        if h < before + listed.corners.len() {
+            return listed.first_corner + h - before;
+        }
+        before += listed.corners.len();
+    }
+    h
+}
+
+impl HalfEdge<Full> {
+    /// Fills `next`, `prev`, `face` and the face entries.
+    pub(super) fn lay_out(&mut self, list: &FaceList<'_>, survey: &Survey, peak: &mut Peak) {
+        let count = list.corner_count() - survey.vertex_loops;
+        self.in_threes = survey.corners_each == Some(3);
+        self.inner_loops = survey.inner_loops;
+        match survey.corners_each {
+            Some(3) => return self.lay_out_alike::<3>(count, peak),
+            Some(4) => return self.lay_out_alike::<4>(count, peak),
+            _ => {}
+        }
+        let links = &mut self.links;
+        links.next = peak.held(Vec::with_capacity(count));
+        links.prev = peak.held(Vec::with_capacity(count));
+        links.face = peak.held(Vec::with_capacity(count));
+        self.face = peak.held(Vec::with_capacity(list.face_count()));
+        self.face_bounds = SideTable::with_capacity(survey.faces_aside);
+        for face in 0..list.face_count() {
+            let mut loops = list.loops(face);
+            let aside = loops.len() != 1;
+            let entry = match loops.next() {
+                Some(listed) if !aside && !listed.is_vertex_loop => {
+                    push_loop(links, listed.corners.len(), face as u32)
+                }
+                _ => {
+                    let loops = list.loops(face);
+                    let how_many = loops.len();
+                    let bounds = loops.map(|listed| {
+                        if listed.is_vertex_loop {
+                            return listed.corners[0] | TOP;
+                        }
+                        push_loop(links, listed.corners.len(), face as u32)
+                    });
+                    self.face_bounds.push(face as u32, (how_many, bounds)) | TOP
+                }
+            };
+            self.face.push(entry);
+        }
+        peak.hold(self.face_bounds.bytes());
+    }
+
+    /// The same where every face is one loop of `K` corners.
+    fn lay_out_alike<const K: usize>(&mut self, count: usize, peak: &mut Peak) {
+        let links = &mut self.links;
+        links.next = peak.held(vec![0; count]);
+        links.prev = peak.held(vec![0; count]);
+        links.face = peak.held(vec![0; count]);
+        self.face = peak.held(vec![0; count / K]);
+        let faces = (links.next.as_chunks_mut::<K>().0.iter_mut())
+            .zip(links.prev.as_chunks_mut::<K>().0)
+            .zip(links.face.as_chunks_mut::<K>().0)
+            .zip(&mut self.face);
+        let (mut number, mut first) = (0, 0);
+        for (((next, prev), face), entry) in faces {
+            for i in 0..K {
+                next[i] = first + ((i + 1) % K) as u32;
+                prev[i] = first + ((i + K - 1) % K) as u32;
+                face[i] = number;
+            }
+            *entry = first;
+            number += 1;
+            first += K as u32;
+        }
     }
 }
 
-/// Adds the records of one loop; returns the first.
+/// Adds the records of one loop of `count` corners; returns the first.
 #[inline]
-fn push_loop(links: &mut Full, corners: &[u32], face: u32) -> u32 {
+fn push_loop(links: &mut Full, count: usize, face: u32) -> u32 {
     let first = links.next.len() as u32;
-    let last = first + corners.len() as u32 - 1;
+    let last = first + count as u32 - 1;
     links.next.extend(first + 1..last + 1);
     links.next.push(first);
     links.prev.push(last);
     links.prev.extend(first..last);
-    links.start.extend_from_slice(corners);
-    links.face.extend(std::iter::repeat_n(face, corners.len()));
+    links.face.extend(std::iter::repeat_n(face, count));
     first
 }

@@ -7,25 +7,17 @@
 mod assemble;
 mod compact;
 mod loops;
-mod numbered;
-mod pairing;
 mod remove;
-
 mod steps;
 #[cfg(test)]
 mod tests;
-mod vertices;
 
 use crate::memory::array_bytes;
 use crate::side::SideTable;
 use crate::slots::Slots;
+use crate::vertex_table::VertexTable;
 use merestone_topology::{ArrayBytes, FaceId, Footprint, OrientedEdgeId, VertexId};
 use std::fmt::{self, Debug};
-
-/// Set in an entry or link that says more than an index.
-const TOP: u32 = 1 << 31;
-/// The entry of a vertex without corners and loops.
-const NONE: u32 = u32::MAX;
 
 /// Which links the records of a [`HalfEdge`] kernel hold.
 ///
@@ -93,15 +85,11 @@ pub struct HalfEdge<L: Links = Full> {
     /// Of each face, the first oriented edge of its only loop, or the top bit and the index of its
     /// bounds in `face_bounds`.
     face: Vec<u32>,
-    /// Of each vertex, the handle of its only sector, `NONE`, or the top bit and the index of its
-    /// sectors and vertex loops in `vertex_uses`.
-    vertex: Vec<u32>,
+    /// The sectors and vertex loops of each vertex.
+    sectors: VertexTable,
     /// The bounds of faces that are not one edge loop: the first oriented edge of a loop, or the
     /// top bit and the vertex of a vertex loop.
     face_bounds: SideTable,
-    /// Of vertices with several sectors or vertex loops: how many sectors, their handles, and the
-    /// faces of the vertex loops, ascending.
-    vertex_uses: SideTable,
     vertices: Slots,
     edges: Slots,
     faces: Slots,
@@ -142,9 +130,13 @@ impl HalfEdge<Full> {
                 array_bytes("edge", &links.edge, uses),
                 array_bytes("edge use", &links.edge_use, self.edges.retired()),
                 array_bytes("face entry", &self.face, self.faces.retired()),
-                array_bytes("vertex entry", &self.vertex, self.vertices.retired()),
+                ArrayBytes {
+                    name: "vertex entry",
+                    bytes: self.sectors.entry_bytes(),
+                    retired: self.vertices.retired() * size_of::<u32>(),
+                },
                 aside("face bounds", self.face_bounds.bytes()),
-                aside("vertex uses", self.vertex_uses.bytes()),
+                aside("vertex uses", self.sectors.list_bytes()),
                 aside("live sets", live_sets.iter().sum()),
             ],
             assembly_peak: self.assembly_peak,

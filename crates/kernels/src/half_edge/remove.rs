@@ -1,6 +1,9 @@
 //! Removing faces and isolated vertices.
 
-use super::{Full, HalfEdge, TOP};
+use super::{Full, HalfEdge};
+use crate::TOP;
+use crate::pairing::Links;
+use crate::removal::Staying;
 use crate::sectors::SectorSearch;
 use merestone_topology::{
     EdgeId, EditError, FaceId, OrientedEdgeId, RemovedFace, Topology, TopologyExt, VertexId,
@@ -11,35 +14,36 @@ impl HalfEdge<Full> {
         if !self.has_face(face) {
             return Err(EditError::stale("face", face));
         }
-        let bounds: Vec<_> = self.face_bounds(face).collect();
+        let inner_loops = self.face_bounds(face).count() - 1;
         let corners: Vec<OrientedEdgeId> = self.face_corners(face).collect();
-        let mut vertices: Vec<VertexId> = self.face_vertices(face).collect();
-        vertices.sort_unstable();
-        vertices.dedup();
-        // What stays is gathered while the walks still find it.
-        let staying: Vec<_> =
-            vertices.iter().map(|&v| (v, self.staying_corners(v, face))).collect();
+        let staying = Staying::without(self, face);
 
-        let retired_edges = self.unlink(&corners);
+        let mut retired_edges = Vec::new();
+        for parted in staying.edges {
+            let uses: Vec<u32> = parted.staying.iter().map(|h| h.to_u32()).collect();
+            self.cycle(&uses, parted.is_plain);
+            match uses.first() {
+                Some(&first) => self.keep_use(parted.edge, first, face),
+                None => {
+                    self.edges.retire(parted.edge.to_u32());
+                    retired_edges.push(parted.edge);
+                }
+            }
+        }
         for &h in &corners {
             self.oriented_edges.retire(h.to_u32());
         }
         self.faces.retire(face.to_u32());
-        self.inner_loops -= bounds.len() - 1;
+        self.inner_loops -= inner_loops;
         self.drop_bounds(face.to_u32());
 
         let mut search = SectorSearch::with_capacity(0);
-        for (v, corners) in staying {
-            let entry = self.vertex[v.to_u32() as usize];
-            let faces: Vec<u32> = self
-                .uses_aside(entry)
-                .1
-                .iter()
-                .copied()
-                .filter(|&other| other != face.to_u32())
-                .collect();
+        for (vertex, corners) in staying.vertices {
+            let vertex = vertex.to_u32();
+            let faces = self.sectors.faces(vertex).iter().copied();
+            let faces: Vec<u32> = faces.filter(|&other| other != face.to_u32()).collect();
             let handles = search.handles(self, &corners);
-            self.set_vertex(v.to_u32(), handles, &faces);
+            self.sectors.set(vertex, handles, &faces);
         }
         Ok(RemovedFace { retired_edges, moved_edges: Vec::new() })
     }
@@ -57,43 +61,10 @@ impl HalfEdge<Full> {
         Ok(())
     }
 
-    fn staying_corners(&self, v: VertexId, leaving: FaceId) -> Vec<OrientedEdgeId> {
-        let mut corners: Vec<_> =
-            self.vertex_corners(v).filter(|&corner| self.face(corner) != leaving).collect();
-        corners.sort_unstable();
-        corners
-    }
-
-    /// Takes uses out of their radial cycles. Returns the edges left without one, retired,
-    /// ascending.
-    fn unlink(&mut self, uses: &[OrientedEdgeId]) -> Vec<EdgeId> {
-        let mut retired = Vec::new();
-        for &h in uses {
-            let edge = self.edge(h);
-            let behind = self.radial(h);
-            if behind == h {
-                self.edges.retire(edge.to_u32());
-                retired.push(edge);
-                continue;
-            }
-            let before = self.edge_uses(edge).find(|&other| self.radial(other) == h);
-            let Some(before) = before else { continue };
-            self.links.radial[before.to_u32() as usize] = behind.to_u32() | TOP;
-            self.links.edge_use[edge.to_u32() as usize] = before.to_u32();
-            self.mark_plain(before.to_u32());
-        }
-        retired.sort_unstable();
-        retired
-    }
-
-    /// Clears the top bits of the edge of `h` if it has become plain; all are set before.
-    fn mark_plain(&mut self, h: u32) {
-        let Full { radial, edge, .. } = &mut self.links;
-        let other = radial[h as usize] & !TOP;
-        let is_two = other != h && radial[other as usize] & !TOP == h;
-        if is_two && (edge[h as usize] ^ edge[other as usize]) & TOP != 0 {
-            radial[h as usize] = other;
-            radial[other as usize] = h;
+    /// Lets `staying` stand for `edge` where a use of the leaving face does.
+    fn keep_use(&mut self, edge: EdgeId, staying: u32, leaving: FaceId) {
+        if self.face(self.edge_use(edge)) == leaving {
+            self.links.edge_use[edge.to_u32() as usize] = staying;
         }
     }
 

@@ -1,6 +1,7 @@
 //! The steps.
 
-use super::{Full, HalfEdge, NONE, TOP, face_id, oriented, vertex_id};
+use super::{Full, HalfEdge, face_id, oriented, vertex_id};
+use crate::TOP;
 use crate::cells::Cells;
 use merestone_topology::{
     Costs, EdgeId, FaceBound, FaceId, Footprint, OrientedEdgeId, Topology, VertexId,
@@ -14,21 +15,6 @@ macro_rules! lives {
 }
 
 impl HalfEdge<Full> {
-    /// The sectors and vertex loops of a vertex that has an entry in the side table.
-    #[inline]
-    pub(super) fn uses_aside(&self, entry: u32) -> (&[u32], &[u32]) {
-        if entry < TOP || entry == NONE {
-            return (&[], &[]);
-        }
-        let list = self.vertex_uses.get(entry & !TOP);
-        list[1..].split_at(list[0] as usize)
-    }
-
-    #[cold]
-    fn sector_aside(&self, entry: u32, i: usize) -> Option<OrientedEdgeId> {
-        self.uses_aside(entry).0.get(i).map(|&h| oriented(h))
-    }
-
     #[cold]
     fn bound_aside(&self, entry: u32, i: usize) -> Option<FaceBound<OrientedEdgeId, VertexId>> {
         self.face_bounds.get(entry & !TOP).get(i).map(|&bound| as_bound(bound))
@@ -190,21 +176,13 @@ impl Topology for HalfEdge<Full> {
     #[inline]
     fn sector(&self, v: VertexId, i: usize) -> Option<OrientedEdgeId> {
         lives!(self.vertices, v);
-        let entry = self.vertex[v.to_u32() as usize];
-        if entry < TOP {
-            return if i == 0 { Some(oriented(entry)) } else { None };
-        }
-        self.sector_aside(entry, i)
+        self.sectors.handle(v.to_u32(), i).map(oriented)
     }
 
     #[inline]
     fn vertex_loop(&self, v: VertexId, i: usize) -> Option<FaceId> {
         lives!(self.vertices, v);
-        let entry = self.vertex[v.to_u32() as usize];
-        if entry < TOP {
-            return None;
-        }
-        self.uses_aside(entry).1.get(i).map(|&f| face_id(f))
+        self.sectors.faces(v.to_u32()).get(i).map(|&f| face_id(f))
     }
 
     #[inline]

@@ -45,7 +45,7 @@ fn leaves_on_one_edge_form_a_cycle_in_list_order_and_open_again_when_removed() {
     let removed = mesh.remove_face(f(0)).unwrap();
     assert_eq!(removed.retired_edges, [EdgeId::from_u32(1), EdgeId::from_u32(2)]);
     assert_eq!((mesh.edge_kind(e), handles(&mesh, 0).len()), (EdgeKind::Plain, 1));
-    assert_eq!(mesh.edge_use(e), h(6));
+    assert_eq!(mesh.edge_use(e), h(3));
     assert_eq!(mesh.remove_face(f(0)), Err(EditError::stale("face", f(0))));
     assert_eq!(mesh.remove_isolated_vertex(v(2)), Ok(()));
     let in_use = EditError::VertexInUse { vertex: 3, face: 1 };

@@ -1,93 +1,122 @@
 //! Vertices at boundaries, joints and misoriented edges, with several fans, or with many corners.
 
+use super::Links;
 use super::buckets::Buckets;
-use super::{Corners, Links, Paired};
-use crate::memory::vec_bytes;
+use super::corners::{Corners, Kept, Keys};
+use crate::memory::Peak;
 use crate::sectors::SectorSearch;
-use merestone_topology::{EdgeUse, OrientedEdgeId};
+use crate::vertex_table::{LATER, VertexTable, faces_at};
+use crate::{memory::vec_bytes, side::SideTable};
+use merestone_topology::{OrientedEdgeId, Topology};
 
-/// How uses are told to belong to one edge, and which way they run along it.
-#[derive(Clone, Copy)]
-pub(super) enum Directions<'a> {
-    /// An edge is an unordered pair of vertices; the uses of an edge from a vertex to itself run
-    /// with it and against it in turn.
-    ByVertices,
-    /// As the list says.
-    ByNumber(&'a [EdgeUse]),
+/// A use that starts or ends at the vertex in hand, to be sorted by edge and number: what tells
+/// the edge, the number, whether the use starts here.
+type Side = u64;
+
+fn side(key: u32, number: u32, outgoing: bool) -> Side {
+    u64::from(key) << 32 | u64::from(number) << 1 | u64::from(outgoing)
 }
 
-/// A use that starts or ends at the vertex in hand.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
-struct Side {
-    /// What tells the edge: the far vertex, or the edge's number.
-    key: u32,
-    number: u32,
-    outgoing: bool,
+fn number_of(side: Side) -> u32 {
+    side as u32 >> 1
 }
 
-/// Links all edges at these vertices, then finds the vertices' sectors. Returns how many edge ends
-/// they have.
+/// The vertices left for later, with their corners.
+fn later<'a, T: Kept>(
+    buckets: &'a Buckets<T>,
+    entries: &'a mut [u32],
+) -> impl Iterator<Item = (u32, &'a [T], &'a mut u32)> {
+    let all =
+        buckets.iter().zip(entries).map(|((vertex, corners), entry)| (vertex, corners, entry));
+    all.filter(|(_, _, entry)| **entry == LATER)
+}
+
+fn widest<T: Kept>(buckets: &Buckets<T>, entries: &mut [u32]) -> usize {
+    later(buckets, entries).map(|(_, corners, _)| corners.len()).max().unwrap_or(0)
+}
+
+/// Links all edges at the vertices left for later. Returns how many edge ends they have, and
+/// whether all those edges are plain.
+#[cold]
 pub(super) fn link<C: Corners>(
     list: C,
-    buckets: &Buckets,
-    vertices: &[u32],
-    directions: Directions<'_>,
+    keys: impl Keys,
+    buckets: &Buckets<C::Kept>,
+    entries: &mut [u32],
     links: &mut impl Links,
-    paired: &mut Paired,
-) -> usize {
-    let widest = vertices.iter().map(|&v| buckets.corners(v).len()).max().unwrap_or(0);
-    let mut sides: Vec<Side> = Vec::with_capacity(2 * widest);
-    let mut uses: Vec<u32> = Vec::with_capacity(2 * widest);
-    let mut ends = 0;
-    for &vertex in vertices {
+    peak: &mut Peak,
+) -> (usize, bool) {
+    let widest = widest(buckets, entries);
+    let mut sides: Vec<Side> = peak.held(Vec::with_capacity(2 * widest));
+    let mut uses: Vec<u32> = peak.held(Vec::with_capacity(2 * widest));
+    let (mut ends, mut all_plain) = (0, true);
+    for (_, corners, _) in later(buckets, entries) {
         sides.clear();
-        for &[before, behind, number] in buckets.corners(vertex) {
-            let entered = list.prev(number);
-            for (number, far, outgoing) in [(entered, before, false), (number, behind, true)] {
-                let key = match directions {
-                    Directions::ByVertices => far,
-                    Directions::ByNumber(listed) => listed[number as usize].edge(),
-                };
-                sides.push(Side { key, number, outgoing });
-            }
+        for &corner in corners {
+            sides.push(side(corner.before(), list.entering(corner), false));
+            sides.push(side(corner.behind(), corner.number(), true));
         }
         sides.sort_unstable();
-        for sides in sides.chunk_by(|a, b| a.key == b.key) {
+        for sides in sides.chunk_by(|a, b| a >> 32 == b >> 32) {
             uses.clear();
-            uses.extend(sides.iter().map(|side| side.number));
+            uses.extend(sides.iter().map(|&side| number_of(side)));
             // An edge from the vertex to itself is here with both ends: each of its uses twice.
             uses.dedup();
             ends += sides.len() / uses.len();
-            links.cycle(&uses, is_plain(sides, &uses, directions));
+            let is_plain = match *uses {
+                [a, b] if sides.len() == 4 => keys.run_opposite(a, b),
+                [_, _] => (sides[0] ^ sides[1]) & 1 == 1,
+                _ => false,
+            };
+            all_plain &= is_plain;
+            links.cycle(&uses, is_plain);
         }
     }
-
-    let mut search = SectorSearch::with_capacity(widest);
-    let mut at: Vec<OrientedEdgeId> = Vec::with_capacity(widest);
-    paired.held(
-        buckets.bytes()
-            + size_of_val(vertices)
-            + vec_bytes(&sides)
-            + vec_bytes(&uses)
-            + vec_bytes(&at)
-            + search.bytes(),
-    );
-    for &vertex in vertices {
-        at.clear();
-        at.extend(buckets.corners(vertex).iter().map(|&[.., c]| OrientedEdgeId::from_u32(c)));
-        let handles = search.handles(links, &at);
-        links.sectors(vertex, handles);
-    }
-    ends
+    peak.drop(sides);
+    peak.drop(uses);
+    (ends, all_plain)
 }
 
-/// Whether `uses`, whose sides at one vertex are `sides`, are two and run opposite ways.
-fn is_plain(sides: &[Side], uses: &[u32], directions: Directions<'_>) -> bool {
-    let [first, second] = *uses else { return false };
-    match directions {
-        Directions::ByNumber(listed) => {
-            listed[first as usize].runs_with_edge() != listed[second as usize].runs_with_edge()
-        }
-        Directions::ByVertices => sides.len() == 4 || sides[0].outgoing != sides[1].outgoing,
+/// Finds the sectors of the vertices left for later, and of those with vertex loops, which are
+/// given as (vertex, face), ascending. All edges must be linked.
+pub(super) fn find_sectors<T: Kept>(
+    mesh: &impl Topology<OrientedEdge = OrientedEdgeId>,
+    buckets: &Buckets<T>,
+    mut entries: Vec<u32>,
+    vertex_loops: &[(u32, u32)],
+    peak: &mut Peak,
+) -> VertexTable {
+    for &(vertex, _) in vertex_loops {
+        entries[vertex as usize] = LATER;
     }
+    let widest = widest(buckets, &mut entries);
+    let mut search = SectorSearch::with_capacity(widest);
+    peak.hold(search.bytes());
+    let mut at: Vec<OrientedEdgeId> = peak.held(Vec::with_capacity(widest));
+    let mut handles_of = |corners: &[T], found: &mut dyn FnMut(&[OrientedEdgeId])| {
+        at.clear();
+        at.extend(corners.iter().map(|corner| OrientedEdgeId::from_u32(corner.number())));
+        found(search.handles(mesh, &at));
+    };
+    // Those of one sector first: then the side table's size is known before it is made.
+    let mut listed = 0;
+    for (vertex, corners, entry) in later(buckets, &mut entries) {
+        let faces = faces_at(vertex_loops, vertex);
+        handles_of(corners, &mut |handles| match VertexTable::entry(handles, faces.len()) {
+            Some(simple) => *entry = simple,
+            None => listed += 1,
+        });
+    }
+    let mut lists = SideTable::with_capacity(listed);
+    if listed > 0 {
+        for (vertex, corners, entry) in later(buckets, &mut entries) {
+            let faces = faces_at(vertex_loops, vertex).iter().map(|&(_, face)| face);
+            handles_of(corners, &mut |handles| {
+                *entry = VertexTable::push(&mut lists, vertex, handles, faces.clone());
+            });
+        }
+    }
+    peak.hold(lists.bytes());
+    peak.release(search.bytes() + vec_bytes(&at));
+    VertexTable::new(entries, lists)
 }

@@ -1,8 +1,9 @@
 //! Pairing the uses of edges: what every kernel does when it is assembled.
 //!
 //! The input is a list of corners, each with the vertex it lies at and the corners before and
-//! behind it; corner `c` doubles as the use of an edge from its vertex to the next corner's. The
-//! corners are sorted by vertex ([`buckets`]), and each vertex is then a small matter of its own:
+//! behind it; corner `c` doubles as the use of an edge from its vertex to the next corner's
+//! ([`corners`]). The corners are sorted by vertex ([`buckets`]), and each vertex is then a small
+//! matter of its own:
 //!
 //! 1. [`regular`]: where the vertices before and behind its corners are the same, each once, all
 //!    edges there are plain and the corners follow one another; linked without a branch that
@@ -11,92 +12,99 @@
 //!    and when all links stand, the sectors are found by definition.
 //!
 //! A closed manifold mesh never gets to the second. A list that numbers its edges takes the same
-//! way with those numbers in place of the far vertices.
+//! way, once the numbers are [checked](numbered), with those numbers in place of the far vertices.
 
 mod buckets;
+mod corners;
 mod irregular;
 mod numbered;
 mod regular;
 
-use crate::memory::vec_bytes;
+use crate::memory::Peak;
+use crate::vertex_table::VertexTable;
 use buckets::Buckets;
-use irregular::Directions;
+pub(crate) use corners::{AnyLoops, Corners, Every};
+use corners::{ByNumber, ByVertices, Keys};
 use merestone_topology::{EdgeUse, FaceListError, OrientedEdgeId, Topology};
 
-/// The not-plain bit of a stored link.
-pub(crate) const LOOSE: u32 = 1 << 31;
-
-/// Corners and how they follow each other.
-pub(crate) trait Corners: Copy {
-    /// How many there are.
-    fn count(self) -> usize;
-    /// The corner before `c` in its loop.
-    fn prev(self, c: u32) -> u32;
-    /// Calls `f(corner, vertex before, vertex, vertex behind)` for every corner, ascending.
-    fn for_each(self, f: impl FnMut(u32, u32, u32, u32));
-}
-
-/// A kernel whose links are being made. Its steps over linked edges must answer already.
+/// A kernel whose links are being made.
+///
+/// Once all edges are linked it is asked for its steps `next`, `prev`, `radial`, `turn` and
+/// `is_plain`, and for nothing else.
 pub(crate) trait Links: Topology<OrientedEdge = OrientedEdgeId> {
-    /// The edge that `leaving` uses is plain, and around `leaving`'s start the corner behind
-    /// `leaving` is `behind`. Comes for both uses of the edge, and may come in vain before
-    /// [`loose`](Self::loose) corrects it.
-    fn turn_to(&mut self, leaving: u32, behind: u32);
-    /// `uses`, ascending, are all the uses of an edge: plain (then there are two) or not.
+    /// The edge that `leaving` uses is plain: its other use is `twin`, behind which comes the
+    /// corner `behind`, the one behind `leaving` around their vertex. Comes for both uses of the
+    /// edge, and may come in vain before [`cycle`](Self::cycle) corrects it.
+    fn plain(&mut self, leaving: u32, twin: u32, behind: u32);
+    /// `uses`, in radial order, are all the uses of an edge: plain (then there are two) or not.
     fn cycle(&mut self, uses: &[u32], is_plain: bool);
-    /// `handle` stands for the only sector of `vertex`.
-    fn sector(&mut self, vertex: u32, handle: u32);
-    /// `handles` stand for the sectors of `vertex`.
-    fn sectors(&mut self, vertex: u32, handles: &[OrientedEdgeId]);
 }
 
-/// What pairing found and used.
-#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+/// What pairing found.
+#[derive(Clone, Debug)]
 pub(crate) struct Paired {
     /// How many edges there are.
     pub(crate) edges: usize,
-    /// The most bytes of scratch held at once.
-    pub(crate) scratch: usize,
-}
-
-impl Paired {
-    fn held(&mut self, bytes: usize) {
-        self.scratch = self.scratch.max(bytes);
-    }
+    /// Whether all of them are plain.
+    pub(crate) all_plain: bool,
+    /// The sectors, and the vertex loops that were given.
+    pub(crate) vertices: VertexTable,
+    /// The uses from a vertex to itself as (vertex, use), ascending.
+    pub(crate) selves: Vec<(u32, u32)>,
 }
 
 /// Pairs the uses of a list in which an edge is an unordered pair of vertices.
 ///
+/// `vertex_loops` are (vertex, face), ascending. What is returned is held in `peak`.
 /// O(corners) expected; a vertex of c corners costs O(c log c) at worst.
-pub(crate) fn pair_by_vertices<C: Corners>(
-    corners: C,
+pub(crate) fn pair_by_vertices(
+    corners: impl Corners,
     vertex_count: usize,
+    vertex_loops: &[(u32, u32)],
     links: &mut impl Links,
+    peak: &mut Peak,
 ) -> Paired {
-    let buckets = Buckets::new(corners, vertex_count);
-    let mut paired = Paired::default();
-    let (irregular, mut ends) = regular::link(&buckets, links);
-    paired.held(buckets.bytes() + vec_bytes(&irregular));
-    ends +=
-        irregular::link(corners, &buckets, &irregular, Directions::ByVertices, links, &mut paired);
-    paired.edges = ends / 2;
-    paired
+    pair(corners, ByVertices, vertex_count, vertex_loops, links, peak)
 }
 
-/// Pairs the uses of a list that numbers its edges.
+/// Pairs the uses of a list that numbers its edges, a use for each of the corners.
 ///
 /// # Errors
 /// [`FaceListError::InconsistentEdge`] unless the numbers have no gap and all uses of an edge
 /// join the same two vertices the way they say.
-pub(crate) fn pair_by_number<C: Corners>(
-    corners: C,
-    vertex_count: usize,
+pub(crate) fn pair_by_number(
+    corners: impl Corners,
     uses: &[EdgeUse],
+    vertex_count: usize,
+    vertex_loops: &[(u32, u32)],
     links: &mut impl Links,
+    peak: &mut Peak,
 ) -> Result<Paired, FaceListError> {
-    let mut paired = numbered::check(corners, uses)?;
-    let buckets = Buckets::new(corners, vertex_count);
-    let all: Vec<u32> = buckets.vertices().filter(|&v| !buckets.corners(v).is_empty()).collect();
-    irregular::link(corners, &buckets, &all, Directions::ByNumber(uses), links, &mut paired);
-    Ok(paired)
+    numbered::check(corners, uses, peak)?;
+    Ok(pair(corners, ByNumber(uses), vertex_count, vertex_loops, links, peak))
+}
+
+fn pair<C: Corners>(
+    list: C,
+    keys: impl Keys,
+    vertex_count: usize,
+    vertex_loops: &[(u32, u32)],
+    links: &mut impl Links,
+    peak: &mut Peak,
+) -> Paired {
+    let buckets = Buckets::new(list, keys, vertex_count, peak);
+    let mut entries = peak.held(vec![0; vertex_count]);
+    let (mut ends, irregular) = regular::link(list, &buckets, links, &mut entries);
+    let mut all_plain = true;
+    if irregular > 0 {
+        let linked = irregular::link(list, keys, &buckets, &mut entries, links, peak);
+        ends += linked.0;
+        all_plain = linked.1;
+    }
+    let vertices = if irregular > 0 || !vertex_loops.is_empty() {
+        irregular::find_sectors(links, &buckets, entries, vertex_loops, peak)
+    } else {
+        VertexTable::all_simple(entries)
+    };
+    Paired { edges: ends / 2, all_plain, vertices, selves: buckets.into_selves(peak) }
 }

@@ -1,7 +1,9 @@
 //! Vertices all of whose edges are plain and whose corners form one ring.
 
 use super::Links;
-use super::buckets::{Buckets, Corner};
+use super::buckets::Buckets;
+use super::corners::{Corners, Kept};
+use crate::vertex_table::{LATER, NONE};
 
 /// Vertices of more corners are left to sorting, which a hub needs: the table would run full.
 const MOST: usize = 16;
@@ -9,61 +11,75 @@ const MOST: usize = 16;
 /// Places in the table: 8 KiB, to stay in the first cache.
 const TABLE: usize = 1024;
 
-/// Links all regular vertices and returns the others, ascending, and how many edge ends the
-/// regular ones have.
-pub(super) fn link(buckets: &Buckets, links: &mut impl Links) -> (Vec<u32>, usize) {
+/// Links all regular vertices. Enters their handles, [`NONE`] where there is no corner, and
+/// [`LATER`] for the others. Returns how many edge ends the regular ones have, and how many others
+/// there are.
+pub(super) fn link<C: Corners>(
+    list: C,
+    buckets: &Buckets<C::Kept>,
+    links: &mut impl Links,
+    entries: &mut [u32],
+) -> (usize, usize) {
     let mut table = [0; TABLE];
-    let mut irregular = Vec::new();
-    let mut ends = 0;
-    for (vertex, corners) in buckets.iter() {
-        if let [first, ..] = corners {
-            if corners.len() <= MOST && link_ring(vertex, corners, &mut table, links) {
-                links.sector(vertex, first[2]);
+    let (mut ends, mut others) = (0, 0);
+    // A use from a vertex to itself would be taken for its own twin.
+    let mut selves = buckets.selves.chunk_by(|a, b| a.0 == b.0).map(|uses| uses[0].0);
+    let mut at_itself = selves.next();
+    for ((vertex, corners), entry) in buckets.iter().zip(entries) {
+        let has_few = corners.len() <= MOST && at_itself != Some(vertex);
+        *entry = match corners {
+            [] => NONE,
+            [first, ..] if has_few && link_ring(list, corners, &mut table, links) => {
                 ends += corners.len();
-            } else {
-                irregular.push(vertex);
+                first.number()
             }
+            _ => {
+                others += 1;
+                LATER
+            }
+        };
+        if at_itself == Some(vertex) {
+            at_itself = selves.next();
         }
     }
-    (irregular, ends)
+    (ends, others)
 }
 
 /// Links the corners of one vertex; `false`, with links that do not count, if it is irregular.
 ///
-/// Corner i is behind corner j around the vertex when the vertex before i is the vertex behind j.
-/// Every corner leaves its number at the place of the vertex before it, in a table with as good
-/// as no collisions among so few; then every corner looks where the vertex behind it leads. No
+/// Corner i is behind corner j around the vertex when the edge before i is the edge behind j.
+/// Every corner leaves its number at the place of the edge before it, in a table with as good
+/// as no collisions among so few; then every corner looks where the edge behind it leads. No
 /// branch depends on the data until all is done. The table is all zero before and after.
 #[inline(always)]
-fn link_ring(
-    vertex: u32,
-    corners: &[Corner],
+fn link_ring<C: Corners>(
+    list: C,
+    corners: &[C::Kept],
     table: &mut [u64; TABLE],
     links: &mut impl Links,
 ) -> bool {
     let mut taken = 0;
-    let mut at_itself = false;
-    for (i, &[before, ..]) in corners.iter().enumerate() {
+    for (i, corner) in corners.iter().enumerate() {
+        let before = corner.before();
         let place = &mut table[before as usize % TABLE];
         taken |= *place;
-        // A use from the vertex to itself would be taken for its own twin.
-        at_itself |= before == vertex;
         *place = (u64::from(before) + 1) << 32 | i as u64;
     }
-    let mut fine = taken == 0 && !at_itself;
+    let mut fine = taken == 0;
     // Which corner is behind each, four bits a corner.
     let mut ring = 0_u64;
-    for (j, &[_, behind, number]) in corners.iter().enumerate() {
-        let place = &mut table[behind as usize % TABLE];
-        fine &= *place >> 32 == u64::from(behind) + 1;
+    for (j, corner) in corners.iter().enumerate() {
+        let place = &mut table[corner.behind() as usize % TABLE];
+        fine &= *place >> 32 == u64::from(corner.behind()) + 1;
         let i = *place & 0xf;
         ring |= i << (4 * j);
-        links.turn_to(number, corners[i as usize][2]);
+        let behind = corners[i as usize];
+        links.plain(corner.number(), list.entering(behind), behind.number());
         *place = 0;
     }
     if !fine {
-        for &[before, ..] in corners {
-            table[before as usize % TABLE] = 0;
+        for corner in corners {
+            table[corner.before() as usize % TABLE] = 0;
         }
         return false;
     }

@@ -1,12 +1,13 @@
 //! Assembling the triangle kernel, and the edits every kernel has.
 
-use super::{LOOSE, TriangleAdjacency, next, prev};
-use crate::pairing::{self, Corners, Links};
+use super::{TriangleAdjacency, next};
+use crate::TOP;
+use crate::memory::Peak;
+use crate::pairing::{Every, Links, pair_by_number, pair_by_vertices};
 use crate::slots::Slots;
-use crate::vertex_table::VertexTable;
 use merestone_topology::{
     Assemble, AssembleError, Compaction, EdgeId, EdgeUse, EditError, FaceId, FaceList,
-    OrientedEdgeId, RemovedFace, Topology, VertexId,
+    OrientedEdgeId, RemovedFace, VertexId,
 };
 
 impl TriangleAdjacency {
@@ -78,105 +79,50 @@ fn from_triangles(
     list: FaceList<'_>,
     triangles: &[[u32; 3]],
 ) -> Result<TriangleAdjacency, AssembleError> {
+    let mut peak = Peak::default();
     let mut mesh = TriangleAdjacency {
-        ends: triangles.iter().map(|&[a, b, c]| [b, c, a]).collect(),
-        turns: vec![0; 3 * triangles.len()],
-        vertices: VertexTable::isolated(list.vertex_count()),
-        against: against_sides(list, triangles),
-        vertex_slots: Slots::new(list.vertex_count()),
+        ends: peak.held(triangles.iter().map(|&[a, b, c]| [b, c, a]).collect()),
+        turns: peak.held(vec![0; 3 * triangles.len()]),
         faces: Slots::new(triangles.len()),
-        edge_count: 0,
-        assembly_peak: 0,
+        vertex_slots: Slots::new(list.vertex_count()),
+        ..TriangleAdjacency::default()
     };
-    let held = mesh.footprint().bytes();
-    let corners = Sides { triangles };
+    let (corners, vertices) = (Every(triangles), list.vertex_count());
     let paired = match list.edge_uses() {
-        None => pairing::pair_by_vertices(corners, list.vertex_count(), &mut mesh),
-        Some(uses) => pairing::pair_by_number(corners, list.vertex_count(), uses, &mut mesh)?,
+        None => pair_by_vertices(corners, vertices, &[], &mut mesh, &mut peak),
+        Some(uses) => pair_by_number(corners, uses, vertices, &[], &mut mesh, &mut peak)?,
     };
     mesh.edge_count = paired.edges;
-    mesh.assembly_peak = (held + paired.scratch).max(mesh.footprint().bytes());
+    mesh.vertices = paired.vertices;
+    mesh.against = peak.held(against_sides(&paired.selves, list.edge_uses()));
+    mesh.assembly_peak = peak.most();
     Ok(mesh)
 }
 
-/// The sides from a vertex to itself that run against their edge.
-fn against_sides(list: FaceList<'_>, triangles: &[[u32; 3]]) -> Vec<u32> {
-    let mut selves: Vec<(u32, u32)> = Vec::new();
-    for (t, &[a, b, c]) in triangles.iter().enumerate() {
-        if a == b || b == c || c == a {
-            for (i, (start, end)) in [(a, b), (b, c), (c, a)].into_iter().enumerate() {
-                if start == end {
-                    selves.push((start, 3 * t as u32 + i as u32));
-                }
-            }
-        }
-    }
-    let mut against: Vec<u32> = match list.edge_uses() {
-        Some(uses) => {
-            let runs_against = |side: &u32| !EdgeUse::runs_with_edge(uses[*side as usize]);
-            selves.iter().map(|&(_, side)| side).filter(runs_against).collect()
-        }
-        None => {
-            // With, against, with … in turn for the uses of each vertex's one such edge.
-            selves.sort_unstable();
-            selves
-                .chunk_by(|a, b| a.0 == b.0)
-                .flat_map(|sides| sides.iter().skip(1).step_by(2).map(|&(_, side)| side))
-                .collect()
-        }
+/// Of the sides from a vertex to itself, given by vertex, those that run against their edge.
+fn against_sides(selves: &[(u32, u32)], uses: Option<&[EdgeUse]>) -> Vec<u32> {
+    let runs_against = |&(index, &(vertex, side)): &(usize, &(u32, u32))| match uses {
+        Some(uses) => !uses[side as usize].runs_with_edge(),
+        // With, against, with … in turn for the uses of each vertex's one such edge.
+        None => (index - selves.partition_point(|&(at, _)| at < vertex)) % 2 == 1,
     };
+    let found = || selves.iter().enumerate().filter(runs_against).map(|(_, &(_, side))| side);
+    let mut against = Vec::with_capacity(found().count());
+    against.extend(found());
     against.sort_unstable();
-    against.shrink_to_fit();
     against
-}
-
-/// The corners of a triangle list.
-#[derive(Clone, Copy)]
-struct Sides<'a> {
-    triangles: &'a [[u32; 3]],
-}
-
-impl Corners for Sides<'_> {
-    fn count(self) -> usize {
-        3 * self.triangles.len()
-    }
-
-    #[inline(always)]
-    fn prev(self, c: u32) -> u32 {
-        prev(c)
-    }
-
-    #[inline(always)]
-    fn for_each(self, mut f: impl FnMut(u32, u32, u32, u32)) {
-        let mut side = 0;
-        for &[a, b, c] in self.triangles {
-            f(side, c, a, b);
-            f(side + 1, a, b, c);
-            f(side + 2, b, c, a);
-            side += 3;
-        }
-    }
 }
 
 impl Links for TriangleAdjacency {
     #[inline(always)]
-    fn turn_to(&mut self, leaving: u32, behind: u32) {
+    fn plain(&mut self, leaving: u32, _twin: u32, behind: u32) {
         self.turns[leaving as usize] = behind;
     }
 
     fn cycle(&mut self, uses: &[u32], is_plain: bool) {
-        let loose = if is_plain { 0 } else { LOOSE };
+        let bit = if is_plain { 0 } else { TOP };
         for (i, &side) in uses.iter().enumerate() {
-            self.turns[side as usize] = next(uses[(i + 1) % uses.len()]) | loose;
+            self.turns[side as usize] = next(uses[(i + 1) % uses.len()]) | bit;
         }
-    }
-
-    #[inline(always)]
-    fn sector(&mut self, vertex: u32, handle: u32) {
-        self.vertices.set_one(vertex, handle);
-    }
-
-    fn sectors(&mut self, vertex: u32, handles: &[OrientedEdgeId]) {
-        self.vertices.set(vertex, handles);
     }
 }

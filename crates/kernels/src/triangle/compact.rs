@@ -1,6 +1,8 @@
 //! Dropping the retired slots of the triangle kernel.
 
-use super::{LOOSE, TriangleAdjacency};
+use super::TriangleAdjacency;
+use crate::TOP;
+use crate::moves::Moves;
 use crate::slots::Slots;
 use merestone_topology::{
     Compaction, Correspondence, EdgeId, FaceId, OrientedEdgeId, Topology, VertexId,
@@ -8,11 +10,11 @@ use merestone_topology::{
 
 impl TriangleAdjacency {
     pub(super) fn compact_all(&mut self) -> Compaction<VertexId, EdgeId, FaceId, OrientedEdgeId> {
-        let vertices = self.vertex_slots.moves(VertexId::from_u32);
-        let faces = self.faces.moves(FaceId::from_u32);
-        let new_side =
-            |side: u32| faces.targets()[side as usize / 3].map(|face| 3 * face.to_u32() + side % 3);
-        let moved = |side: u32| new_side(side).unwrap_or(side);
+        let vertices = Moves::new(&self.vertex_slots);
+        let faces = Moves::new(&self.faces);
+        // The top bit of a side or turn stays, and the place in its triangle too.
+        let moved = |side: u32| 3 * faces.link((side & !TOP) / 3) + (side & !TOP) % 3 | side & TOP;
+        let new_side = |side: u32| self.faces.is_live(side / 3).then(|| moved(side));
         let sides = 0..self.turns.len() as u32;
         let new_bound = 3 * self.faces.count();
         let oriented_edges = sides.clone().map(|s| new_side(s).map(OrientedEdgeId::from_u32));
@@ -23,19 +25,21 @@ impl TriangleAdjacency {
         });
         let edges = Correspondence::new(edges.collect(), new_bound);
 
-        let live = |t: usize| self.faces.is_live(t as u32);
-        let new_vertex = |v: u32| vertices.targets()[v as usize].map_or(v, VertexId::to_u32);
-        let ends = self.ends.iter().enumerate().filter(|&(t, _)| live(t));
-        self.ends = ends.map(|(_, ends)| ends.map(new_vertex)).collect();
-        let turns = self.turns.iter().enumerate().filter(|&(s, _)| live(s / 3));
-        self.turns = turns.map(|(_, turn)| moved(turn & !LOOSE) | turn & LOOSE).collect();
+        self.ends = Moves::squeeze(&self.ends, &self.faces, |ends| ends.map(|v| vertices.link(v)));
+        let turns = self.turns.as_chunks::<3>().0;
+        let turns = Moves::squeeze(turns, &self.faces, |turns| turns.map(moved));
+        self.turns = turns.into_flattened();
         self.against.iter_mut().for_each(|side| *side = moved(*side));
-        self.ends.shrink_to_fit();
-        self.turns.shrink_to_fit();
         self.against.shrink_to_fit();
-        self.vertices.compact(&self.vertex_slots, new_vertex, moved);
+        self.vertices.compact(&self.vertex_slots, moved, |face| faces.link(face));
+        let moves = Compaction {
+            vertices: vertices.correspondence(&self.vertex_slots),
+            edges,
+            faces: faces.correspondence(&self.faces),
+            oriented_edges,
+        };
         self.vertex_slots = Slots::new(self.vertex_slots.count());
         self.faces = Slots::new(self.faces.count());
-        Compaction { vertices, edges, faces, oriented_edges }
+        moves
     }
 }

@@ -16,7 +16,7 @@ mod edges;
 mod remove;
 mod topology;
 
-use crate::pairing::{LOOSE, Links};
+use crate::TOP;
 use crate::slots::Slots;
 use crate::vertex_table::VertexTable;
 pub use edges::{TriangleEdges, TriangleSides};
@@ -34,11 +34,11 @@ pub use edges::{TriangleEdges, TriangleSides};
 /// assert_eq!(mesh.edge_faces(shared).count(), 2);
 /// # Ok::<(), merestone_topology::AssembleError>(())
 /// ```
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Default)]
 pub struct TriangleAdjacency {
     /// The vertices the three sides of each triangle end at.
     ends: Vec<[u32; 3]>,
-    /// For each side the one behind it around its start, with [`LOOSE`].
+    /// For each side the one behind it around its start; top bit set where the edge is not plain.
     turns: Vec<u32>,
     vertices: VertexTable,
     /// The sides, ascending, that start and end at one vertex and run against their edge: what
@@ -75,7 +75,7 @@ impl TriangleAdjacency {
 
     #[inline(always)]
     fn radial_of(&self, side: u32) -> u32 {
-        prev(self.turns[side as usize] & !LOOSE)
+        prev(self.turns[side as usize] & !TOP)
     }
 
     /// The uses of `side`'s edge, in radial order from `side`.
@@ -87,7 +87,7 @@ impl TriangleAdjacency {
     #[inline]
     fn lowest_of(&self, side: u32) -> u32 {
         let turn = self.turns[side as usize];
-        if turn & LOOSE == 0 {
+        if turn < TOP {
             return side.min(prev(turn));
         }
         self.uses_of(side).fold(side, u32::min)
@@ -101,11 +101,5 @@ impl TriangleAdjacency {
         }
         let is_against = |side: u32| self.against.binary_search(&side).is_ok();
         is_against(a) == is_against(b)
-    }
-
-    /// Makes `uses` the radial cycle of an edge.
-    fn link_cycle(&mut self, uses: &[u32]) {
-        let is_plain = matches!(*uses, [a, b] if !self.run_alike(a, b));
-        self.cycle(uses, is_plain);
     }
 }

@@ -1,6 +1,7 @@
 //! The steps of the triangle kernel.
 
-use super::{LOOSE, TriangleAdjacency, TriangleEdges, TriangleSides, next, prev};
+use super::{TriangleAdjacency, TriangleEdges, TriangleSides, next, prev};
+use crate::TOP;
 use crate::cells::Cells;
 use crate::memory::array_bytes;
 use merestone_topology::{
@@ -136,12 +137,12 @@ impl Topology for TriangleAdjacency {
     #[inline(always)]
     fn turn(&self, h: H) -> Option<H> {
         let turn = self.turns[self.side(h) as usize];
-        if turn & LOOSE == 0 { Some(H::from_u32(turn)) } else { None }
+        if turn < TOP { Some(H::from_u32(turn)) } else { None }
     }
 
     #[inline(always)]
     fn is_plain(&self, h: H) -> bool {
-        self.turns[self.side(h) as usize] & LOOSE == 0
+        self.turns[self.side(h) as usize] < TOP
     }
 
     #[inline(always)]
@@ -192,7 +193,7 @@ impl Topology for TriangleAdjacency {
     #[inline(always)]
     fn across(&self, h: H) -> FaceId {
         // The turn lies in the same triangle as the radial it follows.
-        FaceId::from_u32((self.turns[self.side(h) as usize] & !LOOSE) / 3)
+        FaceId::from_u32((self.turns[self.side(h) as usize] & !TOP) / 3)
     }
 
     #[inline(always)]
@@ -211,7 +212,7 @@ impl Topology for TriangleAdjacency {
                 bytes: self.vertices.entry_bytes(),
                 retired: vertices * size_of::<u32>(),
             },
-            exact("further sectors", self.vertices.listed_bytes()),
+            exact("further sectors", self.vertices.list_bytes()),
             array_bytes("self-edge directions", &self.against, 0),
             exact("live faces", self.faces.bytes()),
             exact("live vertices", self.vertex_slots.bytes()),
