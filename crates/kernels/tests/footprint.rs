@@ -1,9 +1,9 @@
 //! What kernels report of their heap against what the allocator counts.
 //!
-//! One test only: the count is of the whole process, so nothing else may run beside it.
+//! The count is of the whole process, so this runs alone, without a test harness and its threads.
 
-use merestone_kernels::HalfEdge;
-use merestone_topology::{Assemble, EdgeUse, FaceId, FaceList, FaceListBuf, VertexId};
+use merestone_kernels::{HalfEdge, TriangleAdjacency};
+use merestone_topology::{Assemble, EdgeUse, FaceId, FaceList, FaceListBuf, Topology, VertexId};
 use peak_alloc::PeakAlloc;
 
 #[global_allocator]
@@ -50,31 +50,51 @@ fn torus(n: u32) -> Vec<[u32; 3]> {
     halves.collect()
 }
 
-#[test]
-fn kernels_report_exactly_what_they_hold() {
+/// The same for both kernels, with the edges told by their vertices and by number.
+fn compare_triangles(name: &str, vertices: usize, triangles: &[[u32; 3]]) {
+    let list = FaceList::triangles(vertices, triangles);
+    compare::<HalfEdge>(&format!("half-edge, {name}"), list);
+    compare::<TriangleAdjacency>(&format!("triangle, {name}"), list);
+    let mesh = HalfEdge::assemble(list).unwrap();
+    let uses = mesh.oriented_edges();
+    let uses = uses.map(|h| EdgeUse::new(mesh.edge(h).to_u32(), mesh.runs_with_edge(h)));
+    let uses: Vec<EdgeUse> = uses.collect();
+    drop(mesh);
+    let list = list.with_edges(&uses).unwrap();
+    compare::<HalfEdge>(&format!("half-edge, {name}, by number"), list);
+    compare::<TriangleAdjacency>(&format!("triangle, {name}, by number"), list);
+}
+
+fn main() {
     let closed = torus(30);
-    compare::<HalfEdge>("closed triangles", FaceList::triangles(900, &closed));
+    compare_triangles("closed", 900, &closed);
 
     // Six links for each oriented edge, one entry for each edge, face and vertex.
     let mesh = HalfEdge::assemble(FaceList::triangles(900, &closed)).unwrap();
-    assert_eq!(merestone_topology::Topology::footprint(&mesh).bytes(), 84 * closed.len());
+    assert_eq!(mesh.footprint().bytes(), 84 * closed.len());
+    // Two links for each side, one entry for each vertex.
+    let mesh = TriangleAdjacency::assemble(FaceList::triangles(900, &closed)).unwrap();
+    assert_eq!(mesh.footprint().bytes(), 26 * closed.len());
     drop(mesh);
 
-    let open = &closed[7..1500];
-    compare::<HalfEdge>("open triangles", FaceList::triangles(905, open));
+    compare_triangles("open", 905, &closed[7..1500]);
 
     let turned: Vec<[u32; 3]> = (closed.iter().enumerate())
         .map(|(t, &[a, b, c])| if t % 5 == 0 { [a, c, b] } else { [a, b, c] })
         .collect();
-    compare::<HalfEdge>("misoriented triangles", FaceList::triangles(900, &turned));
+    compare_triangles("misoriented", 900, &turned);
 
     let doubled = [&closed[..], &turned[..400]].concat();
-    compare::<HalfEdge>("triangles on edges of many uses", FaceList::triangles(900, &doubled));
+    compare_triangles("on edges of many uses", 900, &doubled);
+
+    let repeating: Vec<[u32; 3]> = (0..90).map(|i| [i % 7, i % 7, i % 11]).collect();
+    compare_triangles("with repeated vertices", 11, &repeating);
 
     let hub: Vec<[u32; 3]> = (0..500).map(|i| [0, 1 + i, 1 + (i + 1) % 500]).collect();
-    compare::<HalfEdge>("a hub", FaceList::triangles(501, &hub));
+    compare_triangles("a hub", 501, &hub);
 
-    compare::<HalfEdge>("nothing", FaceList::triangles(0, &[]));
+    compare_triangles("nothing", 0, &[]);
+    compare_triangles("vertices alone", 70, &[]);
 
     let mut list = FaceListBuf::new(60);
     for i in 0..20 {
@@ -91,4 +111,13 @@ fn kernels_report_exactly_what_they_hold() {
     (0..20).for_each(|i| loops_only.push_face(&[i, i + 1, i + 2, i + 20]));
     loops_only.set_edges(uses[..80].to_vec()).unwrap();
     compare::<HalfEdge>("edges by number", loops_only.as_list());
+    // Each vertex loop has a corner and so an edge use, which says nothing.
+    let mut with_loops = FaceListBuf::new(60);
+    for i in 0..20 {
+        with_loops.push_face(&[i, i + 1, i + 2]);
+        with_loops.push_inner_vertex_loop(i + 40);
+    }
+    let uses = (0..80).map(|c| EdgeUse::new(if c % 4 == 3 { 0 } else { c / 4 * 3 + c % 4 }, true));
+    with_loops.set_edges(uses.collect()).unwrap();
+    compare::<HalfEdge>("edges by number beside vertex loops", with_loops.as_list());
 }
