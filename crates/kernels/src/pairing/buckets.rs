@@ -49,6 +49,12 @@ impl<T: Kept> Buckets<T> {
         Self { ends, corners, selves }
     }
 
+    /// The corners of one vertex, ascending.
+    pub(super) fn corners(&self, vertex: u32) -> &[T] {
+        let [begin, end] = [0, 1].map(|i| self.ends[vertex as usize + i] as usize);
+        &self.corners[begin..end]
+    }
+
     /// Each vertex with its corners.
     pub(super) fn iter(&self) -> impl Iterator<Item = (u32, &[T])> {
         let mut begin = 0;

@@ -5,8 +5,8 @@ use super::buckets::Buckets;
 use super::corners::{Corners, Kept, Keys};
 use crate::memory::Peak;
 use crate::sectors::SectorSearch;
+use crate::side::SideTable;
 use crate::vertex_table::{LATER, VertexTable, faces_at};
-use crate::{memory::vec_bytes, side::SideTable};
 use merestone_topology::{OrientedEdgeId, Topology};
 
 /// A use that starts or ends at the vertex in hand, to be sorted by edge and number: what tells
@@ -21,18 +21,17 @@ fn number_of(side: Side) -> u32 {
     side as u32 >> 1
 }
 
-/// The vertices left for later, with their corners.
-fn later<'a, T: Kept>(
-    buckets: &'a Buckets<T>,
-    entries: &'a mut [u32],
-) -> impl Iterator<Item = (u32, &'a [T], &'a mut u32)> {
-    let all =
-        buckets.iter().zip(entries).map(|((vertex, corners), entry)| (vertex, corners, entry));
-    all.filter(|(_, _, entry)| **entry == LATER)
+/// The vertices left for later, ascending.
+fn later(entries: &[u32], peak: &mut Peak) -> Vec<u32> {
+    let is_later = |&&entry: &&u32| entry == LATER;
+    let mut vertices = Vec::with_capacity(entries.iter().filter(is_later).count());
+    let found = (0..).zip(entries).filter(|(_, entry)| is_later(entry));
+    vertices.extend(found.map(|(vertex, _)| vertex));
+    peak.held(vertices)
 }
 
-fn widest<T: Kept>(buckets: &Buckets<T>, entries: &mut [u32]) -> usize {
-    later(buckets, entries).map(|(_, corners, _)| corners.len()).max().unwrap_or(0)
+fn widest<T: Kept>(buckets: &Buckets<T>, vertices: &[u32]) -> usize {
+    vertices.iter().map(|&vertex| buckets.corners(vertex).len()).max().unwrap_or(0)
 }
 
 /// Links all edges at the vertices left for later. Returns how many edge ends they have, and
@@ -42,18 +41,20 @@ pub(super) fn link<C: Corners>(
     list: C,
     keys: impl Keys,
     buckets: &Buckets<C::Kept>,
-    entries: &mut [u32],
+    entries: &[u32],
     links: &mut impl Links,
     peak: &mut Peak,
 ) -> (usize, bool) {
-    let widest = widest(buckets, entries);
+    let vertices = later(entries, peak);
+    let widest = widest(buckets, &vertices);
     let mut sides: Vec<Side> = peak.held(Vec::with_capacity(2 * widest));
     let mut uses: Vec<u32> = peak.held(Vec::with_capacity(2 * widest));
     let (mut ends, mut all_plain) = (0, true);
-    for (_, corners, _) in later(buckets, entries) {
+    for &vertex in &vertices {
         sides.clear();
-        for &corner in corners {
-            sides.push(side(corner.before(), list.entering(corner), false));
+        for corner in buckets.corners(vertex) {
+            let entering = list.entering(corner.number(), || *corner);
+            sides.push(side(corner.before(), entering, false));
             sides.push(side(corner.behind(), corner.number(), true));
         }
         sides.sort_unstable();
@@ -74,11 +75,13 @@ pub(super) fn link<C: Corners>(
     }
     peak.drop(sides);
     peak.drop(uses);
+    peak.drop(vertices);
     (ends, all_plain)
 }
 
 /// Finds the sectors of the vertices left for later, and of those with vertex loops, which are
 /// given as (vertex, face), ascending. All edges must be linked.
+#[cold]
 pub(super) fn find_sectors<T: Kept>(
     mesh: &impl Topology<OrientedEdge = OrientedEdgeId>,
     buckets: &Buckets<T>,
@@ -89,34 +92,36 @@ pub(super) fn find_sectors<T: Kept>(
     for &(vertex, _) in vertex_loops {
         entries[vertex as usize] = LATER;
     }
-    let widest = widest(buckets, &mut entries);
+    let mut vertices = later(&entries, peak);
+    let widest = widest(buckets, &vertices);
     let mut search = SectorSearch::with_capacity(widest);
     peak.hold(search.bytes());
-    let mut at: Vec<OrientedEdgeId> = peak.held(Vec::with_capacity(widest));
-    let mut handles_of = |corners: &[T], found: &mut dyn FnMut(&[OrientedEdgeId])| {
-        at.clear();
-        at.extend(corners.iter().map(|corner| OrientedEdgeId::from_u32(corner.number())));
-        found(search.handles(mesh, &at));
+    let mut corners: Vec<OrientedEdgeId> = peak.held(Vec::with_capacity(widest));
+    let gather = |vertex, corners: &mut Vec<OrientedEdgeId>| {
+        corners.clear();
+        let bucket = buckets.corners(vertex).iter();
+        corners.extend(bucket.map(|corner| OrientedEdgeId::from_u32(corner.number())));
     };
     // Those of one sector first: then the side table's size is known before it is made.
-    let mut listed = 0;
-    for (vertex, corners, entry) in later(buckets, &mut entries) {
-        let faces = faces_at(vertex_loops, vertex);
-        handles_of(corners, &mut |handles| match VertexTable::entry(handles, faces.len()) {
-            Some(simple) => *entry = simple,
-            None => listed += 1,
-        });
-    }
-    let mut lists = SideTable::with_capacity(listed);
-    if listed > 0 {
-        for (vertex, corners, entry) in later(buckets, &mut entries) {
-            let faces = faces_at(vertex_loops, vertex).iter().map(|&(_, face)| face);
-            handles_of(corners, &mut |handles| {
-                *entry = VertexTable::push(&mut lists, vertex, handles, faces.clone());
-            });
+    vertices.retain(|&vertex| {
+        gather(vertex, &mut corners);
+        let handles = search.handles(mesh, &corners);
+        let simple = VertexTable::entry(handles, faces_at(vertex_loops, vertex).len());
+        if let Some(simple) = simple {
+            entries[vertex as usize] = simple;
         }
+        simple.is_none()
+    });
+    let mut lists = SideTable::with_capacity(vertices.len());
+    for &vertex in &vertices {
+        gather(vertex, &mut corners);
+        let handles = search.handles(mesh, &corners);
+        let faces = faces_at(vertex_loops, vertex).iter().map(|&(_, face)| face);
+        entries[vertex as usize] = VertexTable::push(&mut lists, vertex, handles, faces);
     }
     peak.hold(lists.bytes());
-    peak.release(search.bytes() + vec_bytes(&at));
+    peak.release(search.bytes());
+    peak.drop(corners);
+    peak.drop(vertices);
     VertexTable::new(entries, lists)
 }

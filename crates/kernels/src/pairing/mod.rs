@@ -97,7 +97,7 @@ fn pair<C: Corners>(
     let (mut ends, irregular) = regular::link(list, &buckets, links, &mut entries);
     let mut all_plain = true;
     if irregular > 0 {
-        let linked = irregular::link(list, keys, &buckets, &mut entries, links, peak);
+        let linked = irregular::link(list, keys, &buckets, &entries, links, peak);
         ends += linked.0;
         all_plain = linked.1;
     }

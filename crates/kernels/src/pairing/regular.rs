@@ -3,6 +3,7 @@
 use super::Links;
 use super::buckets::Buckets;
 use super::corners::{Corners, Kept};
+use crate::TOP;
 use crate::vertex_table::{LATER, NONE};
 
 /// Vertices of more corners are left to sorting, which a hub needs: the table would run full.
@@ -10,6 +11,17 @@ const MOST: usize = 16;
 
 /// Places in the table: 8 KiB, to stay in the first cache.
 const TABLE: usize = 1024;
+
+/// What a place of the table holds: from bit [`TAG`] on what tells the keys of that place apart,
+/// never 0; from bit [`INDEX`] on the corner's index in its bucket; below, its number.
+const TAG: u32 = 35;
+const INDEX: u32 = 31;
+
+/// A key's tag and its place in the table.
+#[inline(always)]
+fn tag_and_place(key: u32) -> (u64, usize) {
+    (u64::from(key) / TABLE as u64 + 1, key as usize % TABLE)
+}
 
 /// Links all regular vertices. Enters their handles, [`NONE`] where there is no corner, and
 /// [`LATER`] for the others. Returns how many edge ends the regular ones have, and how many others
@@ -60,26 +72,27 @@ fn link_ring<C: Corners>(
 ) -> bool {
     let mut taken = 0;
     for (i, corner) in corners.iter().enumerate() {
-        let before = corner.before();
-        let place = &mut table[before as usize % TABLE];
+        let (tag, place) = tag_and_place(corner.before());
+        let place = &mut table[place];
         taken |= *place;
-        *place = (u64::from(before) + 1) << 32 | i as u64;
+        *place = tag << TAG | (i as u64) << INDEX | u64::from(corner.number());
     }
     let mut fine = taken == 0;
     // Which corner is behind each, four bits a corner.
     let mut ring = 0_u64;
     for (j, corner) in corners.iter().enumerate() {
-        let place = &mut table[corner.behind() as usize % TABLE];
-        fine &= *place >> 32 == u64::from(corner.behind()) + 1;
-        let i = *place & 0xf;
+        let (tag, place) = tag_and_place(corner.behind());
+        let place = &mut table[place];
+        fine &= *place >> TAG == tag;
+        let i = *place >> INDEX & 0xf;
         ring |= i << (4 * j);
-        let behind = corners[i as usize];
-        links.plain(corner.number(), list.entering(behind), behind.number());
+        let behind = *place as u32 & !TOP;
+        links.plain(corner.number(), list.entering(behind, || corners[i as usize]), behind);
         *place = 0;
     }
     if !fine {
         for corner in corners {
-            table[corner.before() as usize % TABLE] = 0;
+            table[tag_and_place(corner.before()).1] = 0;
         }
         return false;
     }
