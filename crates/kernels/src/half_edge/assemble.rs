@@ -147,8 +147,13 @@ impl HalfEdge<Full> {
 
 impl Links for HalfEdge<Full> {
     #[inline(always)]
-    fn plain(&mut self, leaving: u32, twin: u32, _behind: u32) {
-        self.links.radial[leaving as usize] = twin;
+    fn link(twin: u32, _behind: u32) -> u32 {
+        twin
+    }
+
+    #[inline(always)]
+    fn plain(&mut self, leaving: u32, link: u32) {
+        self.links.radial[leaving as usize] = link;
     }
 
     fn cycle(&mut self, uses: &[u32], is_plain: bool) {

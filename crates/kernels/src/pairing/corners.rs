@@ -49,9 +49,8 @@ pub(crate) trait Corners: Copy {
     /// Calls `f` with each corner's vertex and the corner, its keys the vertices before and behind
     /// it; ascending.
     fn for_each(self, f: impl FnMut(u32, Self::Kept));
-    /// The number of the corner before the one that has `number` in its loop. `corner` gets at
-    /// that one as it is kept, for lists that need it.
-    fn entering(self, number: u32, corner: impl FnOnce() -> Self::Kept) -> u32;
+    /// The number of the corner before this one in its loop.
+    fn entering(self, corner: Self::Kept) -> u32;
 }
 
 /// Corners of which every `K` are a loop: the way from one to the next is arithmetic.
@@ -77,7 +76,7 @@ impl<const K: usize> Corners for Every<'_, K> {
     }
 
     #[inline(always)]
-    fn entering(self, number: u32, _corner: impl FnOnce() -> [u32; 3]) -> u32 {
+    fn entering(self, [.., number]: [u32; 3]) -> u32 {
         if number.is_multiple_of(K as u32) { number + K as u32 - 1 } else { number - 1 }
     }
 }
@@ -122,8 +121,8 @@ impl Corners for AnyLoops<'_> {
     }
 
     #[inline(always)]
-    fn entering(self, _number: u32, corner: impl FnOnce() -> [u32; 4]) -> u32 {
-        corner()[3]
+    fn entering(self, [.., entering]: [u32; 4]) -> u32 {
+        entering
     }
 }
 
@@ -159,8 +158,7 @@ impl Keys for ByNumber<'_> {
     #[inline(always)]
     fn keyed<C: Corners>(self, corners: C, corner: C::Kept) -> C::Kept {
         let edge = |number: u32| self.0[number as usize].edge();
-        let entering = corners.entering(corner.number(), || corner);
-        corner.with_keys(edge(entering), edge(corner.number()))
+        corner.with_keys(edge(corners.entering(corner)), edge(corner.number()))
     }
 
     fn run_opposite(self, a: u32, b: u32) -> bool {

@@ -52,9 +52,8 @@ pub(super) fn link<C: Corners>(
     let (mut ends, mut all_plain) = (0, true);
     for &vertex in &vertices {
         sides.clear();
-        for corner in buckets.corners(vertex) {
-            let entering = list.entering(corner.number(), || *corner);
-            sides.push(side(corner.before(), entering, false));
+        for &corner in buckets.corners(vertex) {
+            sides.push(side(corner.before(), list.entering(corner), false));
             sides.push(side(corner.behind(), corner.number(), true));
         }
         sides.sort_unstable();

@@ -29,13 +29,15 @@ use merestone_topology::{EdgeUse, FaceListError, OrientedEdgeId, Topology};
 
 /// A kernel whose links are being made.
 ///
-/// Once all edges are linked it is asked for its steps `next`, `prev`, `radial`, `turn` and
+/// Where edges are linked it is asked for its steps `next`, `prev`, `radial`, `turn` and
 /// `is_plain`, and for nothing else.
 pub(crate) trait Links: Topology<OrientedEdge = OrientedEdgeId> {
-    /// The edge that `leaving` uses is plain: its other use is `twin`, behind which comes the
-    /// corner `behind`, the one behind `leaving` around their vertex. Comes for both uses of the
-    /// edge, and may come in vain before [`cycle`](Self::cycle) corrects it.
-    fn plain(&mut self, leaving: u32, twin: u32, behind: u32);
+    /// The link of a use whose edge is plain: its other use is `twin`, behind which comes the
+    /// corner `behind`.
+    fn link(twin: u32, behind: u32) -> u32;
+    /// `leaving` has this link. Comes for both uses of a plain edge, and may come in vain before
+    /// [`cycle`](Self::cycle) corrects it.
+    fn plain(&mut self, leaving: u32, link: u32);
     /// `uses`, in radial order, are all the uses of an edge: plain (then there are two) or not.
     fn cycle(&mut self, uses: &[u32], is_plain: bool);
 }
@@ -94,14 +96,15 @@ fn pair<C: Corners>(
 ) -> Paired {
     let buckets = Buckets::new(list, keys, vertex_count, peak);
     let mut entries = peak.held(vec![0; vertex_count]);
-    let (mut ends, irregular) = regular::link(list, &buckets, links, &mut entries);
+    let mut ends = regular::link(list, &buckets, links, &mut entries);
     let mut all_plain = true;
-    if irregular > 0 {
+    let has_irregular = ends < list.count();
+    if has_irregular {
         let linked = irregular::link(list, keys, &buckets, &entries, links, peak);
         ends += linked.0;
         all_plain = linked.1;
     }
-    let vertices = if irregular > 0 || !vertex_loops.is_empty() {
+    let vertices = if has_irregular || !vertex_loops.is_empty() {
         irregular::find_sectors(links, &buckets, entries, vertex_loops, peak)
     } else {
         VertexTable::all_simple(entries)

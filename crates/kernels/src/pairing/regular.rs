@@ -3,8 +3,8 @@
 use super::Links;
 use super::buckets::Buckets;
 use super::corners::{Corners, Kept};
-use crate::TOP;
 use crate::vertex_table::{LATER, NONE};
+use merestone_topology::OrientedEdgeId;
 
 /// Vertices of more corners are left to sorting, which a hub needs: the table would run full.
 const MOST: usize = 16;
@@ -12,95 +12,82 @@ const MOST: usize = 16;
 /// Places in the table: 8 KiB, to stay in the first cache.
 const TABLE: usize = 1024;
 
-/// What a place of the table holds: from bit [`TAG`] on what tells the keys of that place apart,
-/// never 0; from bit [`INDEX`] on the corner's index in its bucket; below, its number.
-const TAG: u32 = 35;
-const INDEX: u32 = 31;
-
-/// A key's tag and its place in the table.
-#[inline(always)]
-fn tag_and_place(key: u32) -> (u64, usize) {
-    (u64::from(key) / TABLE as u64 + 1, key as usize % TABLE)
-}
-
 /// Links all regular vertices. Enters their handles, [`NONE`] where there is no corner, and
-/// [`LATER`] for the others. Returns how many edge ends the regular ones have, and how many others
-/// there are.
+/// [`LATER`] for the others. Returns how many edge ends the regular ones have.
 pub(super) fn link<C: Corners>(
     list: C,
     buckets: &Buckets<C::Kept>,
     links: &mut impl Links,
     entries: &mut [u32],
-) -> (usize, usize) {
+) -> usize {
     let mut table = [0; TABLE];
-    let (mut ends, mut others) = (0, 0);
-    // A use from a vertex to itself would be taken for its own twin.
-    let mut selves = buckets.selves.chunk_by(|a, b| a.0 == b.0).map(|uses| uses[0].0);
-    let mut at_itself = selves.next();
-    for ((vertex, corners), entry) in buckets.iter().zip(entries) {
-        let has_few = corners.len() <= MOST && at_itself != Some(vertex);
+    for ((_, corners), entry) in buckets.iter().zip(entries.iter_mut()) {
         *entry = match corners {
             [] => NONE,
-            [first, ..] if has_few && link_ring(list, corners, &mut table, links) => {
-                ends += corners.len();
-                first.number()
-            }
-            _ => {
-                others += 1;
-                LATER
-            }
+            [first, ..] if link_ring(list, corners, &mut table, links) => first.number(),
+            _ => LATER,
         };
-        if at_itself == Some(vertex) {
-            at_itself = selves.next();
-        }
     }
-    (ends, others)
+    // A use from a vertex to itself was taken for its own twin.
+    for &(vertex, _) in &buckets.selves {
+        entries[vertex as usize] = LATER;
+    }
+    let all = list.count();
+    if entries.contains(&LATER) { all - later_corners(buckets, entries) } else { all }
+}
+
+/// How many corners lie at the vertices left for later.
+#[cold]
+fn later_corners<T: Kept>(buckets: &Buckets<T>, entries: &[u32]) -> usize {
+    let later = buckets.iter().zip(entries).filter(|(_, entry)| **entry == LATER);
+    later.map(|((_, corners), _)| corners.len()).sum()
 }
 
 /// Links the corners of one vertex; `false`, with links that do not count, if it is irregular.
 ///
-/// Corner i is behind corner j around the vertex when the edge before i is the edge behind j.
-/// Every corner leaves its number at the place of the edge before it, in a table with as good
-/// as no collisions among so few; then every corner looks where the edge behind it leads. No
-/// branch depends on the data until all is done. The table is all zero before and after.
+/// A corner is behind another around the vertex when the edge before it is the edge behind the
+/// other. Every corner leaves the link to it at the place of the edge before it, in a table with
+/// as good as no collisions among so few; then every corner looks where the edge behind it leads.
+/// No branch depends on the data until all is done. The table is all zero before and after.
 #[inline(always)]
-fn link_ring<C: Corners>(
+fn link_ring<C: Corners, L: Links>(
     list: C,
     corners: &[C::Kept],
     table: &mut [u64; TABLE],
-    links: &mut impl Links,
+    links: &mut L,
 ) -> bool {
+    if corners.len() > MOST {
+        return false;
+    }
     let mut taken = 0;
-    for (i, corner) in corners.iter().enumerate() {
-        let (tag, place) = tag_and_place(corner.before());
-        let place = &mut table[place];
+    for &corner in corners {
+        let before = corner.before();
+        let place = &mut table[before as usize % TABLE];
         taken |= *place;
-        *place = tag << TAG | (i as u64) << INDEX | u64::from(corner.number());
+        let link = L::link(list.entering(corner), corner.number());
+        *place = (u64::from(before) + 1) << 32 | u64::from(link);
     }
     let mut fine = taken == 0;
-    // Which corner is behind each, four bits a corner.
-    let mut ring = 0_u64;
-    for (j, corner) in corners.iter().enumerate() {
-        let (tag, place) = tag_and_place(corner.behind());
-        let place = &mut table[place];
-        fine &= *place >> TAG == tag;
-        let i = *place >> INDEX & 0xf;
-        ring |= i << (4 * j);
-        let behind = *place as u32 & !TOP;
-        links.plain(corner.number(), list.entering(behind, || corners[i as usize]), behind);
+    for corner in corners {
+        let place = &mut table[corner.behind() as usize % TABLE];
+        fine &= *place >> 32 == u64::from(corner.behind()) + 1;
+        links.plain(corner.number(), *place as u32);
         *place = 0;
     }
     if !fine {
         for corner in corners {
-            table[tag_and_place(corner.before()).1] = 0;
+            table[corner.before() as usize % TABLE] = 0;
         }
         return false;
     }
     // One ring, or are there several fans?
-    let mut at = ring & 0xf;
+    let first = OrientedEdgeId::from_u32(corners[0].number());
+    let mut at = links.turn(first);
     let mut length = 1;
-    while at != 0 {
-        at = ring >> (4 * at) & 0xf;
+    while let Some(corner) = at
+        && corner != first
+    {
+        at = links.turn(corner);
         length += 1;
     }
     length == corners.len()

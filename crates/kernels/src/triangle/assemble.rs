@@ -115,8 +115,13 @@ fn against_sides(selves: &[(u32, u32)], uses: Option<&[EdgeUse]>) -> Vec<u32> {
 
 impl Links for TriangleAdjacency {
     #[inline(always)]
-    fn plain(&mut self, leaving: u32, _twin: u32, behind: u32) {
-        self.turns[leaving as usize] = behind;
+    fn link(_twin: u32, behind: u32) -> u32 {
+        behind
+    }
+
+    #[inline(always)]
+    fn plain(&mut self, leaving: u32, link: u32) {
+        self.turns[leaving as usize] = link;
     }
 
     fn cycle(&mut self, uses: &[u32], is_plain: bool) {
