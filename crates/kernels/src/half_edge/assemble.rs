@@ -74,7 +74,11 @@ impl HalfEdge<Full> {
         self.sectors = vertices;
         self.edges = Slots::new(edges);
         self.links.start = peak.held(Vec::with_capacity(corners.count()));
-        corners.for_each(|vertex, _| self.links.start.push(vertex));
+        if corners.count() == list.corner_count() {
+            self.links.start.extend_from_slice(list.corners());
+        } else {
+            corners.for_each(|vertex, _| self.links.start.push(vertex));
+        }
         match &uses {
             None => self.number_edges(edges, all_plain, peak),
             Some(uses) => self.take_numbers(uses, edges, peak),
@@ -154,6 +158,11 @@ impl Links for HalfEdge<Full> {
     #[inline(always)]
     fn plain(&mut self, leaving: u32, link: u32) {
         self.links.radial[leaving as usize] = link;
+    }
+
+    #[inline(always)]
+    fn behind(&self, list: impl Corners, leaving: u32) -> u32 {
+        list.next(self.links.radial[leaving as usize], &self.links.next)
     }
 
     fn cycle(&mut self, uses: &[u32], is_plain: bool) {

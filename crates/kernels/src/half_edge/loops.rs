@@ -26,18 +26,20 @@ impl Survey {
         if list.as_triangles().is_some() {
             return survey;
         }
+        let loops = (0..list.loop_count()).filter_map(|index| list.listed_loop(index));
         let first = list.listed_loop(0).map_or(3, |listed| listed.corners.len());
         let mut all_alike = true;
-        for face in 0..list.face_count() {
-            let (mut loops, mut bare) = (0, 0);
-            for listed in list.loops(face) {
-                loops += 1;
-                bare += usize::from(listed.is_vertex_loop);
-                all_alike &= listed.corners.len() == first;
-            }
-            survey.vertex_loops += bare;
-            survey.inner_loops += loops - 1;
-            survey.faces_aside += usize::from(loops > 1 || bare > 0);
+        for listed in loops {
+            survey.vertex_loops += usize::from(listed.is_vertex_loop);
+            all_alike &= listed.corners.len() == first;
+        }
+        survey.inner_loops = list.loop_count() - list.face_count();
+        if survey.inner_loops + survey.vertex_loops > 0 {
+            let is_aside = |&face: &usize| {
+                let mut loops = list.loops(face);
+                loops.len() > 1 || loops.any(|listed| listed.is_vertex_loop)
+            };
+            survey.faces_aside = (0..list.face_count()).filter(is_aside).count();
         }
         survey.corners_each = (all_alike && survey.faces_aside == 0).then_some(first);
         survey

@@ -51,6 +51,8 @@ pub(crate) trait Corners: Copy {
     fn for_each(self, f: impl FnMut(u32, Self::Kept));
     /// The number of the corner before this one in its loop.
     fn entering(self, corner: Self::Kept) -> u32;
+    /// The number of the corner behind this one in its loop: by arithmetic, or as `stored` for it.
+    fn next(self, number: u32, stored: &[u32]) -> u32;
 }
 
 /// Corners of which every `K` are a loop: the way from one to the next is arithmetic.
@@ -78,6 +80,12 @@ impl<const K: usize> Corners for Every<'_, K> {
     #[inline(always)]
     fn entering(self, [.., number]: [u32; 3]) -> u32 {
         if number.is_multiple_of(K as u32) { number + K as u32 - 1 } else { number - 1 }
+    }
+
+    #[inline(always)]
+    fn next(self, number: u32, _stored: &[u32]) -> u32 {
+        let last = K as u32 - 1;
+        if number % K as u32 == last { number - last } else { number + 1 }
     }
 }
 
@@ -123,6 +131,11 @@ impl Corners for AnyLoops<'_> {
     #[inline(always)]
     fn entering(self, [.., entering]: [u32; 4]) -> u32 {
         entering
+    }
+
+    #[inline(always)]
+    fn next(self, number: u32, stored: &[u32]) -> u32 {
+        stored[number as usize]
     }
 }
 

@@ -38,6 +38,8 @@ pub(crate) trait Links: Topology<OrientedEdge = OrientedEdgeId> {
     /// `leaving` has this link. Comes for both uses of a plain edge, and may come in vain before
     /// [`cycle`](Self::cycle) corrects it.
     fn plain(&mut self, leaving: u32, link: u32);
+    /// The corner behind `leaving` around its start, by the link it has.
+    fn behind(&self, list: impl Corners, leaving: u32) -> u32;
     /// `uses`, in radial order, are all the uses of an edge: plain (then there are two) or not.
     fn cycle(&mut self, uses: &[u32], is_plain: bool);
 }

@@ -4,7 +4,6 @@ use super::Links;
 use super::buckets::Buckets;
 use super::corners::{Corners, Kept};
 use crate::vertex_table::{LATER, NONE};
-use merestone_topology::OrientedEdgeId;
 
 /// Vertices of more corners are left to sorting, which a hub needs: the table would run full.
 const MOST: usize = 16;
@@ -81,13 +80,11 @@ fn link_ring<C: Corners, L: Links>(
         return false;
     }
     // One ring, or are there several fans?
-    let first = OrientedEdgeId::from_u32(corners[0].number());
-    let mut at = links.turn(first);
+    let first = corners[0].number();
+    let mut at = links.behind(list, first);
     let mut length = 1;
-    while let Some(corner) = at
-        && corner != first
-    {
-        at = links.turn(corner);
+    while at != first {
+        at = links.behind(list, at);
         length += 1;
     }
     length == corners.len()

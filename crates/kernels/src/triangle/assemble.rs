@@ -3,7 +3,7 @@
 use super::{TriangleAdjacency, next};
 use crate::TOP;
 use crate::memory::Peak;
-use crate::pairing::{Every, Links, pair_by_number, pair_by_vertices};
+use crate::pairing::{Corners, Every, Links, pair_by_number, pair_by_vertices};
 use crate::slots::Slots;
 use merestone_topology::{
     Assemble, AssembleError, Compaction, EdgeId, EdgeUse, EditError, FaceId, FaceList,
@@ -122,6 +122,11 @@ impl Links for TriangleAdjacency {
     #[inline(always)]
     fn plain(&mut self, leaving: u32, link: u32) {
         self.turns[leaving as usize] = link;
+    }
+
+    #[inline(always)]
+    fn behind(&self, _list: impl Corners, leaving: u32) -> u32 {
+        self.turns[leaving as usize]
     }
 
     fn cycle(&mut self, uses: &[u32], is_plain: bool) {

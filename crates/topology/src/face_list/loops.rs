@@ -5,6 +5,7 @@ use std::iter::FusedIterator;
 use std::ops::Range;
 
 /// Where run `index` begins, when runs are given by their ends.
+#[inline]
 pub(super) fn start_of(ends: &[u32], index: usize) -> usize {
     index.checked_sub(1).and_then(|before| ends.get(before)).map_or(0, |&end| end as usize)
 }

@@ -189,6 +189,7 @@ impl<'a> FaceList<'a> {
     }
 
     /// Loop number `index`, counted over all faces; `None` when out of range.
+    #[inline]
     #[must_use]
     pub fn listed_loop(&self, index: usize) -> Option<ListedLoop<'a>> {
         let (range, is_vertex_loop) = match self.shape {
