@@ -12,8 +12,11 @@ impl TriangleAdjacency {
     pub(super) fn compact_all(&mut self) -> Compaction<VertexId, EdgeId, FaceId, OrientedEdgeId> {
         let vertices = Moves::new(&self.vertex_slots);
         let faces = Moves::new(&self.faces);
-        // The top bit of a side or turn stays, and the place in its triangle too.
-        let moved = |side: u32| 3 * faces.link((side & !TOP) / 3) + (side & !TOP) % 3 | side & TOP;
+        // A side keeps its place in its triangle, a turn its top bit.
+        let moved = |link: u32| {
+            let side = link & !TOP;
+            (3 * faces.link(side / 3) + side % 3) | (link & TOP)
+        };
         let new_side = |side: u32| self.faces.is_live(side / 3).then(|| moved(side));
         let sides = 0..self.turns.len() as u32;
         let new_bound = 3 * self.faces.count();
