@@ -35,17 +35,25 @@ impl<K: Topology, S: Scalar> Brep<K, S> {
         self.topology().index_buffer().map(|triangles| triangles[face.index()].map(place))
     }
 
-    /// The Newell vector of the loop through `h`.
+    /// The Newell vector of the loop through `first`.
     #[inline]
-    fn loop_vector(&self, h: K::OrientedEdge) -> Vector3<f64> {
-        // About a corner of the loop, so that nothing large cancels.
+    fn loop_vector(&self, first: K::OrientedEdge) -> Vector3<f64> {
         let mesh = self.topology();
-        let origin = self.position(mesh.start(h));
-        let step = |(sum, before): (Vector3<f64>, Vector3<f64>), h| {
-            let here: Vector3<f64> = self.position(mesh.start(h)) - origin;
-            (sum + before.cross(&here), here)
-        };
-        mesh.loop_corners(h).fold((Vector3::zeros(), Vector3::zeros()), step).0
+        // About a corner of the loop, so that nothing large cancels. The two sides at that corner
+        // then give nothing, and are left out.
+        let origin = self.position(mesh.start(first));
+        let from_origin = |h| self.position(mesh.start(h)) - origin;
+        let second = mesh.next(first);
+        let mut before = from_origin(second);
+        let mut h = mesh.next(second);
+        let mut sum = Vector3::zeros();
+        while h != first {
+            let here = from_origin(h);
+            sum += before.cross(&here);
+            before = here;
+            h = mesh.next(h);
+        }
+        sum
     }
 
     /// The unit normal of a face, zero where its Newell vector vanishes. O(corners).
