@@ -41,8 +41,7 @@ fn does<'a>(run: impl FnMut() + 'a) -> Box<dyn Job + 'a> {
 }
 
 fn main() {
-    let seconds = std::env::var("SECONDS").ok().and_then(|seconds| seconds.parse().ok());
-    let budget = Duration::from_secs_f64(seconds.unwrap_or(1.0));
+    let budget = merestone_benches::budget();
     meshes::for_each(|name, subject| {
         let Some(triangles) = subject.triangles() else {
             println!("{name}: not all faces are triangles; nothing here takes others");

@@ -21,8 +21,7 @@ fn main() {
     let chosen: Vec<Work> =
         Work::ALL.into_iter().filter(|work| words.iter().any(|word| word == work.name())).collect();
     let works = if chosen.is_empty() { Work::ALL.to_vec() } else { chosen };
-    let seconds = std::env::var("SECONDS").ok().and_then(|seconds| seconds.parse().ok());
-    let budget = Duration::from_secs_f64(seconds.unwrap_or(1.0));
+    let budget = merestone_benches::budget();
     println!(
         "{:<12} {:<13} {:>9} {:>9} {:>9} {:>9} {:>9}   {:>8} {:>6}   {:>9} {:>6}",
         "mesh",
