@@ -123,7 +123,11 @@ impl Topology for HalfEdge<Full> {
     }
     #[inline]
     fn end(&self, h: OrientedEdgeId) -> VertexId {
-        self.start(self.next(h))
+        lives!(self.oriented_edges, h);
+        // Where the edge is plain, the other use starts here: a walk around a vertex has loaded it.
+        let radial = self.links.radial[h.to_u32() as usize];
+        let behind = if radial < TOP { radial } else { self.links.next[h.to_u32() as usize] };
+        VertexId::from_u32(self.links.start[behind as usize])
     }
     #[inline]
     fn next(&self, h: OrientedEdgeId) -> OrientedEdgeId {
