@@ -165,33 +165,58 @@ fn breadth_first<K: Topology>(
         // One place more than faces: what has its label is written there too, and forgotten.
         front.resize(labels.len() + 1, seed);
         front[0] = seed;
+        let mut threes = [[seed; 3]; BLOCK];
         let (mut at, mut end) = (0, 1);
         while at < end {
             let block = at..end.min(at + BLOCK);
             at = block.end;
-            near.clear();
-            for &face in &front[block] {
+            let size = block.len();
+            let mut all_threes = true;
+            for (&face, three) in front[block.clone()].iter().zip(&mut threes) {
                 match mesh.triangle(face) {
-                    Some(corners) => near.extend(corners.map(|h| mesh.across(h))),
-                    None => mesh.face_corners(face).for_each(|h| near.push(mesh.across(h))),
+                    Some(corners) => *three = corners.map(|h| mesh.across(h)),
+                    None => all_threes = false,
                 }
             }
-            // No label is written here: else each load would wait for the stores before it. And
-            // no branch is guessed, here or below.
-            let mut kept = 0;
-            for i in 0..near.len() {
-                let face = near[i];
-                near[kept] = face;
-                kept += usize::from(labels[face.index()] == NONE);
-            }
-            for &face in &near[..kept] {
-                let label = &mut labels[face.index()];
-                front[end] = face;
-                end += usize::from(*label == NONE);
-                *label = count;
+            if all_threes {
+                let near = threes[..size].as_flattened_mut();
+                end = reach(near, labels, count, front, end);
+            } else {
+                near.clear();
+                for &face in &front[block] {
+                    mesh.face_corners(face).for_each(|h| near.push(mesh.across(h)));
+                }
+                end = reach(near, labels, count, front, end);
             }
         }
         count += 1;
     });
     count as usize
+}
+
+/// Labels those of `near` that have no label yet and adds them to the front, whose new end is
+/// returned. Overwrites `near`.
+#[inline(always)]
+fn reach<F: Id>(
+    near: &mut [F],
+    labels: &mut [u32],
+    label: u32,
+    front: &mut [F],
+    mut end: usize,
+) -> usize {
+    // No label is written in the first pass: else each load would wait for the stores before it.
+    // And no branch is guessed in either.
+    let mut kept = 0;
+    for i in 0..near.len() {
+        let face = near[i];
+        near[kept] = face;
+        kept += usize::from(labels[face.index()] == NONE);
+    }
+    for &face in &near[..kept] {
+        let place = &mut labels[face.index()];
+        front[end] = face;
+        end += usize::from(*place == NONE);
+        *place = label;
+    }
+    end
 }
