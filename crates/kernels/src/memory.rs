@@ -47,6 +47,25 @@ impl Peak {
         drop(array);
     }
 
+    /// `memory` cut down to what `array` needs and filled by it.
+    ///
+    /// Counted as the worst an allocator can do: to make the small one before it drops the large.
+    pub(crate) fn reused<T: Copy>(
+        &mut self,
+        mut memory: Vec<T>,
+        array: impl ExactSizeIterator<Item = T>,
+    ) -> Vec<T> {
+        let before = vec_bytes(&memory);
+        memory.truncate(array.len());
+        memory.iter_mut().zip(array).for_each(|(place, value)| *place = value);
+        memory.shrink_to_fit();
+        if vec_bytes(&memory) < before {
+            self.hold(vec_bytes(&memory));
+            self.release(before);
+        }
+        memory
+    }
+
     /// The most bytes held at once so far.
     pub(crate) fn most(&self) -> usize {
         self.most

@@ -4,7 +4,9 @@ use super::loops::{Survey, corner_of, listed_vertex_loops, oriented_uses};
 use super::{Full, HalfEdge};
 use crate::TOP;
 use crate::memory::Peak;
-use crate::pairing::{AnyLoops, Corners, Every, Links, Paired, pair_by_number, pair_by_vertices};
+use crate::pairing::{
+    AnyLoops, Corners, Every, Kept, Links, Paired, pair_by_number, pair_by_vertices,
+};
 use crate::slots::Slots;
 use merestone_topology::{
     Assemble, AssembleError, Compaction, EdgeId, EdgeUse, EditError, FaceId, FaceList,
@@ -69,16 +71,18 @@ impl HalfEdge<Full> {
             Some(uses) => pair_by_number(corners, uses, vertices, vertex_loops, self, peak)
                 .map_err(|error| in_the_list(error, &list))?,
         };
-        let Paired { edges, all_plain, vertices, selves } = paired;
+        let Paired { edges, all_plain, vertices, selves, memory } = paired;
         peak.drop(selves);
         self.sectors = vertices;
         self.edges = Slots::new(edges);
-        self.links.start = peak.held(Vec::with_capacity(corners.count()));
-        if corners.count() == list.corner_count() {
-            self.links.start.extend_from_slice(list.corners());
+        self.links.start = if corners.count() == list.corner_count() {
+            peak.reused(Kept::into_numbers(memory), list.corners().iter().copied())
         } else {
-            corners.for_each(|vertex, _| self.links.start.push(vertex));
-        }
+            peak.drop(memory);
+            let mut start = peak.held(Vec::with_capacity(corners.count()));
+            corners.for_each(|vertex, _| start.push(vertex));
+            start
+        };
         match &uses {
             None => self.number_edges(edges, all_plain, peak),
             Some(uses) => self.take_numbers(uses, edges, peak),

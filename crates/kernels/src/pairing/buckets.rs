@@ -65,11 +65,10 @@ impl<T: Kept> Buckets<T> {
         })
     }
 
-    /// Drops all but the uses from a vertex to itself.
-    pub(super) fn into_selves(self, peak: &mut Peak) -> Vec<(u32, u32)> {
+    /// Keeps the uses from a vertex to itself, and the memory of the corners, to be used again.
+    pub(super) fn into_parts(self, peak: &mut Peak) -> (Vec<(u32, u32)>, Vec<T>) {
         peak.drop(self.ends);
-        peak.drop(self.corners);
-        self.selves
+        (self.selves, self.corners)
     }
 }
 

@@ -13,10 +13,16 @@ pub(crate) trait Kept: Copy {
     fn behind(self) -> u32;
     fn number(self) -> u32;
     fn with_keys(self, before: u32, behind: u32) -> Self;
+    /// Many of them as plain numbers, in the same memory.
+    fn into_numbers(many: Vec<Self>) -> Vec<u32>;
 }
 
 impl<const N: usize> Kept for [u32; N] {
     const ZERO: Self = [0; N];
+
+    fn into_numbers(many: Vec<Self>) -> Vec<u32> {
+        many.into_flattened()
+    }
 
     #[inline(always)]
     fn before(self) -> u32 {

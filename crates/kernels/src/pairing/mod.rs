@@ -23,7 +23,7 @@ mod regular;
 use crate::memory::Peak;
 use crate::vertex_table::VertexTable;
 use buckets::Buckets;
-pub(crate) use corners::{AnyLoops, Corners, Every};
+pub(crate) use corners::{AnyLoops, Corners, Every, Kept};
 use corners::{ByNumber, ByVertices, Keys};
 use merestone_topology::{EdgeUse, FaceListError, OrientedEdgeId, Topology};
 
@@ -46,7 +46,7 @@ pub(crate) trait Links: Topology<OrientedEdge = OrientedEdgeId> {
 
 /// What pairing found.
 #[derive(Clone, Debug)]
-pub(crate) struct Paired {
+pub(crate) struct Paired<T> {
     /// How many edges there are.
     pub(crate) edges: usize,
     /// Whether all of them are plain.
@@ -55,19 +55,22 @@ pub(crate) struct Paired {
     pub(crate) vertices: VertexTable,
     /// The uses from a vertex to itself as (vertex, use), ascending.
     pub(crate) selves: Vec<(u32, u32)>,
+    /// The memory the corners were sorted in, one place a corner, for an array of the kernel's:
+    /// memory that was touched before is faster than fresh memory.
+    pub(crate) memory: Vec<T>,
 }
 
 /// Pairs the uses of a list in which an edge is an unordered pair of vertices.
 ///
 /// `vertex_loops` are (vertex, face), ascending. What is returned is held in `peak`.
 /// O(corners) expected; a vertex of c corners costs O(c log c) at worst.
-pub(crate) fn pair_by_vertices(
-    corners: impl Corners,
+pub(crate) fn pair_by_vertices<C: Corners>(
+    corners: C,
     vertex_count: usize,
     vertex_loops: &[(u32, u32)],
     links: &mut impl Links,
     peak: &mut Peak,
-) -> Paired {
+) -> Paired<C::Kept> {
     pair(corners, ByVertices, vertex_count, vertex_loops, links, peak)
 }
 
@@ -76,14 +79,14 @@ pub(crate) fn pair_by_vertices(
 /// # Errors
 /// [`FaceListError::InconsistentEdge`] unless the numbers have no gap and all uses of an edge
 /// join the same two vertices the way they say.
-pub(crate) fn pair_by_number(
-    corners: impl Corners,
+pub(crate) fn pair_by_number<C: Corners>(
+    corners: C,
     uses: &[EdgeUse],
     vertex_count: usize,
     vertex_loops: &[(u32, u32)],
     links: &mut impl Links,
     peak: &mut Peak,
-) -> Result<Paired, FaceListError> {
+) -> Result<Paired<C::Kept>, FaceListError> {
     numbered::check(corners, uses, peak)?;
     Ok(pair(corners, ByNumber(uses), vertex_count, vertex_loops, links, peak))
 }
@@ -95,7 +98,7 @@ fn pair<C: Corners>(
     vertex_loops: &[(u32, u32)],
     links: &mut impl Links,
     peak: &mut Peak,
-) -> Paired {
+) -> Paired<C::Kept> {
     let buckets = Buckets::new(list, keys, vertex_count, peak);
     let mut entries = peak.held(vec![0; vertex_count]);
     let mut ends = regular::link(list, &buckets, links, &mut entries);
@@ -111,5 +114,6 @@ fn pair<C: Corners>(
     } else {
         VertexTable::all_simple(entries)
     };
-    Paired { edges: ends / 2, all_plain, vertices, selves: buckets.into_selves(peak) }
+    let (selves, memory) = buckets.into_parts(peak);
+    Paired { edges: ends / 2, all_plain, vertices, selves, memory }
 }

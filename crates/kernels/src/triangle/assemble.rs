@@ -81,7 +81,6 @@ fn from_triangles(
 ) -> Result<TriangleAdjacency, AssembleError> {
     let mut peak = Peak::default();
     let mut mesh = TriangleAdjacency {
-        ends: peak.held(triangles.iter().map(|&[a, b, c]| [b, c, a]).collect()),
         turns: peak.held(vec![0; 3 * triangles.len()]),
         faces: Slots::new(triangles.len()),
         vertex_slots: Slots::new(list.vertex_count()),
@@ -94,6 +93,9 @@ fn from_triangles(
     };
     mesh.edge_count = paired.edges;
     mesh.vertices = paired.vertices;
+    // Pairing asks for no vertex, so that the ends can take over what it sorted the corners in.
+    let ends = triangles.iter().map(|&[a, b, c]| [b, c, a]);
+    mesh.ends = peak.reused(paired.memory, ends);
     mesh.against = peak.held(against_sides(&paired.selves, list.edge_uses()));
     mesh.assembly_peak = peak.most();
     Ok(mesh)
