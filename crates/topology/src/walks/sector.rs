@@ -95,6 +95,22 @@ impl<H: Id> SectorState<H> {
         }
     }
 
+    /// A step of a forward walk of one sector where `turn` answers: the corner stood on, and
+    /// whether it was the last. `None`, and nothing moves, where there is more to it.
+    #[inline(always)]
+    pub(super) fn turn_once<K>(&mut self, mesh: &K) -> Option<(H, bool)>
+    where
+        K: Topology<OrientedEdge = H> + ?Sized,
+    {
+        if self.0.tally.has_flags() {
+            return None;
+        }
+        let here = self.0.current;
+        let behind = mesh.turn(here)?;
+        self.0.current = behind;
+        Some((here, behind == self.0.first))
+    }
+
     /// Folds the stretch of the sector for which `turn` answers, each corner as `item` says: one
     /// load and one test a corner. Leaves the walk where it has no answer; `None` at the end of a
     /// walk of one sector.

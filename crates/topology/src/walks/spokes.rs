@@ -55,6 +55,33 @@ impl<H: Id> SpokesState<H> {
     }
 }
 
+impl<H: Id> SpokesState<H> {
+    /// A step in any sector. By value, so that a loop can keep the state in registers.
+    #[cold]
+    #[inline(never)]
+    fn step_rarely<K>(mut self, mesh: &K) -> (Self, Option<Spoke<H>>)
+    where
+        K: Topology<OrientedEdge = H> + ?Sized,
+    {
+        let Some(sector) = &mut self.0 else { return (self, None) };
+        let spoke = if sector.0.tally.done() {
+            // Its corners are through, and what is left is where it was entered.
+            sector.0.tally.clear_entry();
+            entry(mesh, sector)
+        } else {
+            let corner = sector.0.current;
+            let was_backward = sector.0.tally.backward();
+            sector.step(mesh);
+            let turned_back = corner == sector.0.first && sector.0.tally.reversed();
+            exit(mesh, corner, was_backward || turned_back)
+        };
+        if sector.0.tally.done() && !sector.0.tally.entry() {
+            self.0 = sector.next_sector(mesh);
+        }
+        (self, Some(spoke))
+    }
+}
+
 /// The side `corner` is left by.
 #[inline(always)]
 fn exit<K: Topology + ?Sized>(
@@ -80,21 +107,15 @@ impl<K: Topology + ?Sized> WalkState<K> for SpokesState<K::OrientedEdge> {
     #[inline]
     fn advance(&mut self, mesh: &K) -> Option<Spoke<K::OrientedEdge>> {
         let sector = self.0.as_mut()?;
-        let spoke = if sector.0.tally.done() {
-            // Its corners are through, and what is left is where it was entered.
-            sector.0.tally.clear_entry();
-            entry(mesh, sector)
-        } else {
-            let corner = sector.0.current;
-            let was_backward = sector.0.tally.backward();
-            sector.step(mesh);
-            let turned_back = corner == sector.0.first && sector.0.tally.reversed();
-            exit(mesh, corner, was_backward || turned_back)
+        let Some((corner, last)) = sector.turn_once(mesh) else {
+            let (state, item) = self.clone().step_rarely(mesh);
+            *self = state;
+            return item;
         };
-        if sector.0.tally.done() && !sector.0.tally.entry() {
-            self.0 = sector.next_sector(mesh);
+        if last {
+            self.0 = None;
         }
-        Some(spoke)
+        Some(Spoke { oriented_edge: corner, outgoing: true })
     }
 
     #[inline]

@@ -27,17 +27,38 @@ impl<H: Id> VertexCornersState<H> {
     }
 }
 
+impl<H: Id> VertexCornersState<H> {
+    /// A step in any sector. By value, so that a loop can keep the state in registers.
+    #[cold]
+    #[inline(never)]
+    fn step_rarely<K>(mut self, mesh: &K) -> (Self, Option<H>)
+    where
+        K: Topology<OrientedEdge = H> + ?Sized,
+    {
+        let Some(sector) = &mut self.0 else { return (self, None) };
+        let corner = WalkState::<K>::advance(sector, mesh);
+        if sector.0.tally.done() {
+            self.0 = sector.next_sector(mesh);
+        }
+        (self, corner)
+    }
+}
+
 impl<K: Topology + ?Sized> WalkState<K> for VertexCornersState<K::OrientedEdge> {
     type Item = K::OrientedEdge;
 
     #[inline]
     fn advance(&mut self, mesh: &K) -> Option<K::OrientedEdge> {
         let sector = self.0.as_mut()?;
-        let corner = WalkState::<K>::advance(sector, mesh);
-        if sector.0.tally.done() {
-            self.0 = sector.next_sector(mesh);
+        let Some((corner, last)) = sector.turn_once(mesh) else {
+            let (state, item) = self.clone().step_rarely(mesh);
+            *self = state;
+            return item;
+        };
+        if last {
+            self.0 = None;
         }
-        corner
+        Some(corner)
     }
 
     #[inline]
