@@ -63,14 +63,10 @@ impl UnionFind {
         let parents = others.map(|other| self.parents[other as usize]);
         let least = parents.iter().fold(a, |least, &parent| least.min(parent));
         self.parents[a as usize] = least;
-        // One branch for all: where sets are large already, it is hardly ever taken.
-        let apart = parents
-            .iter()
-            .zip(&others)
-            .fold(false, |apart, (&parent, &other)| apart | ((parent != least) & (other != a)));
-        if apart {
-            for other in others {
-                self.union(a, other);
+        for i in 0..N {
+            // Where the parent is `a`, it is `a` itself that was given.
+            if parents[i] != least && parents[i] != a {
+                self.union(a, others[i]);
             }
         }
     }
