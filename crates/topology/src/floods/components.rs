@@ -220,3 +220,58 @@ fn reach<F: Id>(
     }
     end
 }
+
+#[cfg(all(test, feature = "conformance"))]
+mod tests {
+    use super::*;
+    use crate::conformance::{Reference, random_complex};
+    use crate::{Assemble, FaceId};
+
+    /// By the definition: faces around one edge get one label, until nothing changes.
+    fn by_definition(mesh: &Reference) -> (Vec<u32>, usize) {
+        let mut least: Vec<usize> = (0..mesh.face_bound()).collect();
+        loop {
+            let before = least.clone();
+            for edge in mesh.edges() {
+                let faces: Vec<usize> = mesh.edge_faces(edge).map(Id::index).collect();
+                let lowest = faces.iter().map(|&face| least[face]).min().unwrap_or(0);
+                faces.into_iter().for_each(|face| least[face] = lowest);
+            }
+            if least == before {
+                break;
+            }
+        }
+        let mut roots: Vec<usize> = mesh.faces().map(|face| least[face.index()]).collect();
+        roots.sort_unstable();
+        roots.dedup();
+        let label = |root: &usize| roots.binary_search(root).map_or(NONE, |label| label as u32);
+        (least.iter().map(label).collect(), roots.len())
+    }
+
+    #[test]
+    fn both_ways_give_the_components_of_the_definition() {
+        let mut several = 0;
+        for seed in 0..150 {
+            let complex = random_complex(seed);
+            let mut mesh = Reference::assemble(complex.to_list().as_list()).unwrap();
+            for index in (seed as usize % 3..mesh.face_bound()).step_by(4) {
+                mesh.remove_face(FaceId::from_u32(index as u32)).unwrap();
+            }
+            let (expected, count) = by_definition(&mesh);
+            several += usize::from(count > 1);
+            // What memory held before must not show.
+            let mut unions = vec![7; 3];
+            let mut floods = vec![9; 5];
+            let counts = [
+                by_union(&mesh, &mut unions),
+                breadth_first(&mesh, &mut Vec::new(), &mut Vec::new(), &mut floods),
+            ];
+            assert_eq!(counts, [count; 2], "{}", complex.name);
+            for face in mesh.faces().map(Id::index) {
+                let found = [unions[face], floods[face]];
+                assert_eq!(found, [expected[face]; 2], "{}, face {face}", complex.name);
+            }
+        }
+        assert!(several > 20, "too few complexes in several pieces: {several}");
+    }
+}
