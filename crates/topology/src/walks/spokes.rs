@@ -53,9 +53,7 @@ impl<H: Id> SpokesState<H> {
             Self(Some(sector))
         }
     }
-}
 
-impl<H: Id> SpokesState<H> {
     /// A step in any sector. By value, so that a loop can keep the state in registers.
     #[cold]
     #[inline(never)]

@@ -25,9 +25,7 @@ impl<H: Id> VertexCornersState<H> {
     {
         if sector.0.tally.done() { Self(sector.next_sector(mesh)) } else { Self(Some(sector)) }
     }
-}
 
-impl<H: Id> VertexCornersState<H> {
     /// A step in any sector. By value, so that a loop can keep the state in registers.
     #[cold]
     #[inline(never)]
