@@ -103,3 +103,47 @@ impl<K: Topology> Iterator for Flooded<'_, K> {
 }
 
 impl<K: Topology> std::iter::FusedIterator for Flooded<'_, K> {}
+
+#[cfg(all(test, feature = "conformance"))]
+mod tests {
+    use super::*;
+    use crate::conformance::{Reference, random_complex};
+    use crate::{Assemble, FaceId, floods::Components};
+
+    #[test]
+    fn floods_reach_each_component_once_and_by_distance() {
+        let mut flood = FaceFlood::new();
+        for seed in 0..120 {
+            let complex = random_complex(seed);
+            let mut mesh = Reference::assemble(complex.to_list().as_list()).unwrap();
+            for index in (seed as usize % 3..mesh.face_bound()).step_by(5) {
+                mesh.remove_face(FaceId::from_u32(index as u32)).unwrap();
+            }
+            let components = Components::of(&mesh);
+            let mut distance = mesh.face_column(usize::MAX);
+            let mut floods = 0;
+            for seed in mesh.faces() {
+                if flood.has_reached(seed) {
+                    continue;
+                }
+                floods += 1;
+                let reached: Vec<FaceId> = flood.from(&mesh, seed).collect();
+                assert_eq!(reached[0], seed);
+                distance[seed] = 0;
+                let mut last = 0;
+                for face in reached {
+                    assert_eq!(components.number(face), components.number(seed));
+                    assert!(distance[face] >= last, "{}: {face} comes too late", complex.name);
+                    last = distance[face];
+                    for across in mesh.face_faces(face) {
+                        distance[across] = distance[across].min(last + 1);
+                    }
+                }
+            }
+            assert_eq!(floods, components.count(), "{}", complex.name);
+            assert!(mesh.faces().all(|face| flood.has_reached(face)), "{}", complex.name);
+            flood.clear();
+            assert!(!mesh.faces().any(|face| flood.has_reached(face)), "{}", complex.name);
+        }
+    }
+}
