@@ -2,6 +2,8 @@
 
 mod build;
 mod export;
+#[cfg(test)]
+mod tests;
 
 pub use build::BuildError;
 pub use export::{NotATriangle, Polygons, Triangles};
